@@ -1,0 +1,1 @@
+"""The cheapest explanation of a reported list by the expectations."""

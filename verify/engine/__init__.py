@@ -1,0 +1,1 @@
+"""Running many records: serial or in a pool of processes, same result."""

@@ -1,0 +1,1 @@
+"""Which nuclei give one signal, which may coincide or double, and how they couple."""

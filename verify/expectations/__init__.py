@@ -1,0 +1,1 @@
+"""What each environment should show: shift window, couplings, splittings."""

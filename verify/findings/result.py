@@ -1,0 +1,50 @@
+"""The result of one record and of a run."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass, field
+from enum import StrEnum
+from typing import Any
+
+from verify.findings.finding import Finding, Level
+
+
+class Verdict(StrEnum):
+    """What the list says against the structure; ``CONSISTENT`` is no proof of identity."""
+
+    CONSISTENT = "consistent"
+    QUERIED = "queried"
+    CONTRADICTED = "contradicted"
+    UNASSESSED = "unassessed"
+
+
+@dataclass(frozen=True, slots=True)
+class RecordResult:
+    """``assignment`` holds one plain mapping per spectrum, as the report schema describes it.
+
+    ``unassessed_because`` is a sentence, empty unless the verdict is ``UNASSESSED``.
+    ``seconds`` is measured by the engine and stays out of reports that must be reproducible.
+    """
+
+    compound: str
+    file: str
+    verdict: Verdict
+    findings: tuple[Finding, ...]
+    assignment: tuple[Mapping[str, Any], ...] = ()
+    unassessed_because: str = ""
+    summary: Mapping[str, Any] = field(default_factory=dict)
+
+    def standing(self, level: Level) -> tuple[Finding, ...]:
+        """Findings of this level that no deviation accepts."""
+        return tuple(f for f in self.findings if f.level is level and f.stands)
+
+
+def verdict_of(findings: tuple[Finding, ...], unassessed: bool) -> Verdict:
+    """Worst standing finding decides; an unassessed record with a standing error stays contradicted."""
+    levels = {f.level for f in findings if f.stands}
+    if Level.ERROR in levels:
+        return Verdict.CONTRADICTED
+    if unassessed:
+        return Verdict.UNASSESSED
+    return Verdict.QUERIED if Level.WARNING in levels else Verdict.CONSISTENT

@@ -1,0 +1,1 @@
+"""Reading reported peak lists: text to signals, each with its span."""

@@ -1,0 +1,1 @@
+"""The stages of one record, in order, and the rules over many records."""

@@ -1,0 +1,1 @@
+"""Findings and results written for people and machines."""

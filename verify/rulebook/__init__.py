@@ -1,0 +1,1 @@
+"""Facts to findings by declarative rules, policies and accepted deviations."""

@@ -1,0 +1,1 @@
+"""Structure text to a molecule, its components, composition and stereo."""
