@@ -6,7 +6,7 @@ index ``PeakList.signals``.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 
 @dataclass(frozen=True, slots=True)
@@ -62,6 +62,10 @@ class SignalReading:
     solvent_line: str = ""
     impurity: str = ""
     attached_h_wrong: bool = False
+
+    def with_impurity(self, name: str) -> SignalReading:
+        """The same reading, explained as a line of a known impurity."""
+        return replace(self, impurity=name)
 
 
 @dataclass(frozen=True, slots=True)
@@ -123,7 +127,6 @@ class SpectrumAssignment:
     totals: Totals
     cost: float
     repairs: tuple[Repair, ...] = ()
-    next_cost: float = float("inf")
     lenient: str = ""
     group_cut: tuple[int, ...] = ()
     offset: float = 0.0
