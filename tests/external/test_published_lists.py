@@ -1,7 +1,7 @@
 """No published list may break the tool: every one ends in a verdict, with a reason where it is not judged.
 
-Sources: the ``source`` field of each record in tests/reference/published_facts.jsonl; the wider set is read from the
-data folder beside the repository (``PEAKWITNESS_DATA`` or ``../shared/data``) where it is there.
+Sources: the ``source`` field of each record in tests/reference/published_facts.jsonl; the wider set is read
+from the data folder beside the repository (``PEAKWITNESS_DATA`` or ``../shared/data``) where it is there.
 """
 
 from __future__ import annotations

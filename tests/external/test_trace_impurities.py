@@ -1,7 +1,7 @@
 """Every compound of the published trace-impurity tables must pass as its own record.
 
-Source of every number: Gottlieb et al., J. Org. Chem. 1997, 62, 7512; Fulmer et al., Organometallics 2010, 29,
-2176; Babij et al., Org. Process Res. Dev. 2016, 20, 661 (tests/reference/trace_impurities.yaml).
+Source of every number: Gottlieb et al., J. Org. Chem. 1997, 62, 7512; Fulmer et al., Organometallics 2010,
+29, 2176; Babij et al., Org. Process Res. Dev. 2016, 20, 661 (tests/reference/trace_impurities.yaml).
 """
 
 from __future__ import annotations

@@ -1,6 +1,7 @@
 """Lists of ordinary compounds as published or as handbooks give them must not be contradicted.
 
-The source of each stands in its ``source`` field; ``from_memory`` entries say so (tests/reference/worked_examples.yaml).
+The source of each stands in its ``source`` field in tests/reference/worked_examples.yaml; entries from
+memory say so.
 """
 
 from __future__ import annotations
@@ -35,18 +36,14 @@ def _carbon(line: float | dict[str, Any]) -> str:
 
 def _record(example: dict[str, Any]) -> dict[str, Any]:
     field = example["frequency_mhz"] or 400
-    spectra = [
-        {
-            "nucleus": "1H",
-            "field_mhz": field,
-            "solvent": example["solvent"],
-            "report": ", ".join(_proton(signal) for signal in example["signals"]),
-        }
-    ]
+    texts = {"1H": ", ".join(_proton(signal) for signal in example["signals"])}
     if example["carbons"]:
-        report = ", ".join(_carbon(line) for line in example["carbons"])
-        spectra.append({"nucleus": "13C", "field_mhz": field / 4, "solvent": example["solvent"], "report": report})
-    spectra = [{k: v for k, v in s.items() if v is not None} for s in spectra]
+        texts["13C"] = ", ".join(_carbon(line) for line in example["carbons"])
+    spectra = [
+        {"nucleus": nucleus, "field_mhz": field if nucleus == "1H" else field / 4, "report": text}
+        | ({"solvent": example["solvent"]} if example["solvent"] else {})
+        for nucleus, text in texts.items()
+    ]
     return {"compound": example["name"], "structure": {"smiles": example["smiles"]}, "spectra": spectra}
 
 
