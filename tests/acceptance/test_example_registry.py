@@ -1,4 +1,4 @@
-"""The real command on the example registry: accepted records pass, each planted fault is named where it stands."""
+"""The real command on the example: accepted records pass, each planted fault is named where it stands."""
 
 from __future__ import annotations
 
@@ -15,7 +15,7 @@ import yaml
 ROOT = Path(__file__).parents[2]
 EXAMPLE = ROOT / "registry_example"
 INCOMING = EXAMPLE / "incoming"
-FAULTS: list[dict[str, Any]] = yaml.safe_load((INCOMING / "FAULTS.yaml").read_text(encoding="utf-8"))["faults"]
+FAULTS = yaml.safe_load((INCOMING / "FAULTS.yaml").read_text(encoding="utf-8"))["faults"]
 TODAY = date.today()
 
 
@@ -86,7 +86,9 @@ def test_every_submission_has_one_documented_fault() -> None:
 
 
 @pytest.mark.parametrize("fault", FAULTS, ids=[f"{f['compound']}-{f['rule']}" for f in FAULTS])
-def test_planted_fault_is_named_at_its_place(fault: dict[str, Any], incoming: tuple[int, dict[str, Any]]) -> None:
+def test_planted_fault_is_named_at_its_place(
+    fault: dict[str, str], incoming: tuple[int, dict[str, Any]]
+) -> None:
     record = INCOMING / "compounds" / fault["compound"] / "record.yaml"
     reported = next(r for r in incoming[1]["records"] if r["compound"] == fault["compound"])
     assert reported["verdict"] != "consistent"

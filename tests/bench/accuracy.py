@@ -46,8 +46,10 @@ def judge(published: Published) -> Outcome:
     start = time.perf_counter()
     result = verify.examine(published.record(), policy="registration")
     seconds = time.perf_counter() - start
-    said = {level: tuple(f"{f.rule}: {f.message}" for f in result.findings if f.stands and f.level == level)
-            for level in ("error", "warning")}
+    said = {
+        level: tuple(f"{f.rule}: {f.message}" for f in result.findings if f.stands and f.level == level)
+        for level in ("error", "warning")
+    }
     verdict = str(result.verdict)
     return Outcome(published.id, verdict, said["error"], said["warning"], result.unassessed_because, seconds)
 
