@@ -12,6 +12,7 @@ from itertools import combinations, permutations
 
 from verify.expectations.model import CouplingBlock
 from verify.expectations.pattern_search import (
+    CAP,
     GROUP_CUT,
     GROUP_CUT_DOUBTFUL,
     HIDDEN_SEEN,
@@ -26,8 +27,8 @@ from verify.expectations.pattern_search import (
     Letter,
     Partner,
     Placement,
-    Search,
     outside,
+    place_partners,
 )
 
 MULTIPLET = 0.25
@@ -38,10 +39,11 @@ LINES_LOST = 1.5  # a septet written as a quintet: the outer lines drown in the 
 DOUBLED_J = 1.5  # "dt, J = 13.8, 6.9" for a septet-like pattern
 SWAPPED = 0.7
 EXTRA_J = 0.2
+OVERLAPPED_FACTOR = 0.5  # what is left of the letters says less
 BROAD_FACTOR, APPARENT_FACTOR, RANGE_FACTOR = 0.6, 0.6, 0.7
 J_MARGIN_HZ, J_FLOOR_HZ = 2.0, 5.0
 MAX_LETTERS, MAX_J_ORDERS = 5, 6
-BIG = 12.0
+FREE_TO_CUT = "hh.alkene_cis_or_trans"  # the two H of =CH2 couple unequally
 
 
 @dataclass(frozen=True, slots=True)
@@ -79,9 +81,9 @@ def _partner(number: int, block: CouplingBlock) -> Partner:
         left_out, seen = (LEFT_OUT_SMALL if block.typical < SMALL_WINDOW_HZ else LEFT_OUT), 0.0
     else:
         left_out, seen = 0.0, OPTIONAL_SEEN if block.visibility == "optional" else HIDDEN_SEEN
-    doubtful = block.label.startswith("xh.") or block.label.startswith("hh.ring_")
-    cut = GROUP_CUT_DOUBTFUL if doubtful else GROUP_CUT
-    return Partner(block.count, block.low, block.high, left_out, seen, cut, block.bonds >= 4, number)
+    doubtful = block.label.startswith(("xh.", "hh.ring_"))
+    cut = 0.0 if block.label == FREE_TO_CUT else GROUP_CUT_DOUBTFUL if doubtful else GROUP_CUT
+    return Partner(block.count, block.low, block.high, left_out, seen, cut, number)
 
 
 @lru_cache(maxsize=4096)
@@ -150,21 +152,23 @@ def _orders(counts: tuple[int, ...], js: tuple[float, ...]) -> list[tuple[float,
 def _drop_price(count: int, j: float, facts: _Facts, merged: bool) -> float:
     if 0.0 <= j <= SMALL_J_HZ:
         return SMALL_DROPPED_EXPLAINED if facts.far else SMALL_DROPPED
-    return SPURIOUS if merged and count == 1 else BIG
+    return SPURIOUS if merged and count == 1 else CAP
 
 
-def _search(facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], merged: bool) -> Placement:
+def _place(
+    facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], merged: bool, cap: float
+) -> Placement:
     letters = tuple(Letter(c, j, _drop_price(c, j, facts, merged)) for c, j in zip(counts, js, strict=True))
-    return Search(facts.partners, letters).run()
+    return place_partners(facts.partners, letters, cap)
 
 
 def _nested(facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], merged: bool) -> PatternPrice:
     """First-order letters with at least one splitting."""
-    best, swapped, placement = 1e9, False, None
+    best, swapped, placement = CAP, False, None
     for price, order in _orders(counts, js):
         if price >= best:
             continue
-        found = _search(facts, counts, order, merged)
+        found = _place(facts, counts, order, merged, best - price)
         if found.cost + price < best - 1e-9:
             best, swapped, placement = found.cost + price, price == SWAPPED, found
         if best <= SWAPPED:
@@ -202,7 +206,7 @@ def _overlapped(
     kept = [(c, j) for c, j in zip(counts, js, strict=False) if j <= limit]
     counts_left, js_left = tuple(c for c, _ in kept), tuple(j for _, j in kept)
     rest = _nested(facts, counts_left, js_left, merged) if counts_left else PatternPrice(0.0)
-    cost = SPURIOUS + 0.5 * (len(impossible) - 1) + min(rest.cost, SINGLET_START)
+    cost = SPURIOUS + 0.5 * (len(impossible) - 1) + OVERLAPPED_FACTOR * rest.cost
     return PatternPrice(cost, "overlapped signals picked as one", rest.unused, impossible, rest.swapped, True)
 
 
