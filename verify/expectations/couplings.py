@@ -99,9 +99,10 @@ def _of_one(
 
 
 def coupling_blocks(
-    structure: Structure, environments: EnvironmentSet, solvent: str | None
+    structure: Structure, environments: EnvironmentSet, solvent: str | None, sketch: Sketch | None = None
 ) -> tuple[Blocks, ...]:
-    """Partners of every environment, aligned with ``EnvironmentSet.all``; windows are absolute J in Hz."""
-    sketch = draw_sketch(structure.mol)
+    """Partners of every environment, aligned with ``EnvironmentSet.all``; windows are absolute J in Hz.
+    ``sketch`` saves drawing the molecule again."""
+    sketch = sketch or draw_sketch(structure.mol)
     salt = "salt" in structure.flags or any(c.role == "counter-ion" for c in structure.components)
     return tuple(_of_one(sketch, e, environments, solvent, salt) for e in environments.all)
