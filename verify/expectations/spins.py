@@ -1,8 +1,8 @@
 """Exact spectra of coupled spin-1/2 nuclei: line positions, intensities and line shape at a given field.
 
-The Hamiltonian (in Hz) is H = sum v_i Iz_i + sum J_ij I_i.I_j. It is block-diagonal in the total z spin. A group
-of magnetically equivalent nuclei acts as composite particles of spin n/2, n/2 - 1, ... with known multiplicities
-(textbook theory of high-resolution NMR); couplings inside a group drop out.
+The Hamiltonian (in Hz) is H = sum v_i Iz_i + sum J_ij I_i.I_j. It is block-diagonal in the total z spin. A
+group of magnetically equivalent nuclei acts as composite particles of spin n/2, n/2 - 1, ... with known
+multiplicities (textbook theory of high-resolution NMR); couplings inside a group drop out.
 """
 
 from __future__ import annotations
@@ -166,10 +166,11 @@ def simulate(
     shifts_ppm: Sequence[float], couplings_hz: Array, groups: Sequence[int], field_mhz: float,
     weak_above: float | None = None,
 ) -> Lines:
-    """Lines of groups of equivalent nuclei. ``couplings_hz`` is symmetric, shape (groups, groups), its diagonal
-    is ignored. With ``weak_above``, pairs whose shift difference exceeds that many J are coupled through their
-    z spins only, which splits the work into smaller blocks; without it the result is exact. Raises ValueError
-    if a block would hold more than ``LARGEST_BLOCK`` states or the arguments do not fit together."""
+    """Lines of groups of equivalent nuclei. ``couplings_hz`` is symmetric, shape (groups, groups), its
+    diagonal is ignored. With ``weak_above``, pairs whose shift difference exceeds that many J are coupled
+    through their z spins only, which splits the work into smaller blocks; without it the result is exact.
+    Raises ValueError if a block would hold more than ``LARGEST_BLOCK`` states or the arguments do not fit
+    together."""
     hz = np.asarray(shifts_ppm, dtype=np.float64) * field_mhz
     couplings = np.array(couplings_hz, dtype=np.float64)
     size = len(hz)
@@ -210,8 +211,8 @@ def merged(lines: Lines, resolution_hz: float = 0.05) -> Lines:
 
 
 def lineshape(lines: Lines, grid_hz: Array, width_hz: float) -> Array:
-    """Sum of Lorentzians of full width ``width_hz`` at half height, shape of ``grid_hz``; its area is the sum of
-    the intensities."""
+    """Sum of Lorentzians of full width ``width_hz`` at half height, shape of ``grid_hz``; its area is the sum
+    of the intensities."""
     half = width_hz / 2.0
     spectrum = np.zeros(len(grid_hz))
     for start in range(0, len(lines.frequency_hz), LINES_AT_ONCE):
