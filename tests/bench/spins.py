@@ -1,4 +1,4 @@
-"""Prints the time of the exact spin simulation by number of different nuclei: ``python tests/bench/spins.py``.
+"""Prints the time of the exact spin simulation by number of nuclei: ``python tests/bench/spins.py``.
 
 Targets on one core: nine nuclei under 30 ms, eleven under 300 ms.
 """
