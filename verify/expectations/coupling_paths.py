@@ -9,8 +9,12 @@ from verify.expectations.sketch import Sketch, geometry
 
 EXCHANGING = frozenset({"D2O", "CD3OD", "TFA-d", "CD3CO2D", "TFE-d3"})
 SLOW = frozenset({"DMSO-d6", "DMF-d7", "acetone-d6"})
-AMIDE_LIKE = frozenset({"amide", "sulfonamide", "carbamate", "urea", "thioamide", "hydrazide", "imide"})
-NEVER_SPLIT = frozenset({"acid", "phenol", "enol", "oxime", "hydroxylamine"})
+AMIDE_LIKE = frozenset({
+    "amide", "sulfonamide", "carbamate", "urea", "thioamide", "hydrazide", "imide", "enamine", "amidine",
+    "phosphoramide", "hydroxamic acid",
+})
+AMMONIUM = frozenset({"ammonium", "iminium"})
+NEVER_SPLIT = frozenset({"acid", "phenol", "enol", "oxime", "hydroxylamine", "silanol", "boronic acid"})
 
 
 def exchanges(solvent: str | None) -> bool:
@@ -39,7 +43,7 @@ def exchangeable_path(sketch: Sketch, path: tuple[int, ...], kind: str, solvent:
         seen = OPTIONAL if slow else HIDDEN
     elif kind in AMIDE_LIKE:
         label, seen = "xh.CH_NH_amide", OPTIONAL
-    elif kind == "ammonium" or sketch.charge[hetero] > 0:
+    elif kind in AMMONIUM or sketch.charge[hetero] > 0:
         label, seen = "xh.CH_NH3plus_slow", OPTIONAL
     else:
         label, seen = "xh.CH_NH_amine", OPTIONAL if slow else HIDDEN

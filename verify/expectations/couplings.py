@@ -26,7 +26,8 @@ def _averaged(sketch: Sketch, environment: Environment) -> bool:
     """True where all nuclei of a carrier are alike, so that conformers average to one J."""
     if environment.kind in AVERAGED_KINDS:
         return True
-    return bool(environment.carriers) and sketch.hydrogens(environment.carriers[0]) == environment.count
+    carriers = environment.carriers
+    return len(environment.atoms) == len(carriers) * sketch.hydrogens(carriers[0])
 
 
 def _classify(
