@@ -1,24 +1,42 @@
 """Is there a symmetry operation that carries one atom to another?
 
 The substitution test asks whether two positions, marked in turn, give the same compound, mirror images or
-diastereomers. That is the question whether an automorphism of the constitution exists that keeps the sense of every
-stereo element (sign +1: homotopic), reverses every chiral one (sign -1: enantiotopic), or neither. Branches over
-chain bonds are decided once each and remembered; only ring systems need backtracking.
+diastereomers. That is the question whether an automorphism of the constitution exists that keeps the sense
+of every stereo element (sign +1: homotopic), reverses every chiral one (sign -1: enantiotopic), or neither.
+Branches over chain bonds are decided once each and remembered; only ring systems need backtracking.
 """
 
 from __future__ import annotations
 
 from collections.abc import Iterator
+from dataclasses import dataclass
 
 from verify.environments.elements import FREE, Elements
+from verify.environments.ring_axes import ring_axes_kept
 from verify.environments.skeleton import Skeleton
 
-MOST_STEPS = 60_000
+MOST_STEPS = 20_000
+NO_DEMAND, IMPOSSIBLE = -1, -2
 Images = dict[int, int]
 
 
-class SearchLimit(Exception):
+class SearchLimitError(Exception):
     """The bound on steps was reached; the question stays open."""
+
+
+@dataclass(frozen=True, slots=True)
+class Demand:
+    """What is asked of the operation where a walk begins or enters a ring system.
+
+    ``parent`` is carried to ``parent_image`` (-1: none). ``twist``: 0/1 if the slots of a far end must be kept or
+    swapped. ``cross``: 0/1 if the first H of a CH2 must land on the first/second one; -1 where free.
+    """
+
+    sign: int
+    parent: int = -1
+    parent_image: int = -1
+    twist: int = NO_DEMAND
+    cross: int = NO_DEMAND
 
 
 class Search:
@@ -31,64 +49,68 @@ class Search:
         self._orders: dict[int, tuple[list[tuple[int, int]], list[list[int]]]] = {}
         self._steps = 0
 
-    def carries(self, atom: int, image: int, sign: int, cross: int = -1) -> bool:
+    def carries(self, atom: int, image: int, sign: int, cross: int = NO_DEMAND) -> bool:
         """True if an operation of this sign carries ``atom`` to ``image``.
 
-        ``cross`` 0/1 demands in addition that the first hydrogen of a CH2 lands on the first/second one (-1: either).
+        ``cross`` 0/1 demands in addition that the first hydrogen of a CH2 lands on the first/second one.
         Gives up with False when the bound on steps is reached.
         """
         if self._s.colour[atom] != self._s.colour[image]:
             return False
         self._steps = 0
+        demand = Demand(sign, cross=cross)
         try:
             if self._s.block[atom] >= 0:
-                return self._block(atom, image, (-1, -1), sign, -1, cross)
+                return self._block(atom, image, demand)
             return any(
-                self._settle(atom, image, images, -1, sign, -1, cross)
-                for images in self._matches(atom, image, {})
+                self._settle(atom, image, images, demand) for images in self._matches(atom, image, {})
             )
-        except (SearchLimit, RecursionError):
+        except (SearchLimitError, RecursionError):
             return False
 
     def same_branch(self, atom: int, a: int, b: int) -> bool:
         """True if chain branches ``a`` and ``b`` at ``atom`` are alike in sense too."""
         self._steps = 0
         try:
-            return self._branch(atom, a, atom, b, 1, -1)
-        except (SearchLimit, RecursionError):
+            return self._branch(atom, a, atom, b, 1, NO_DEMAND)
+        except (SearchLimitError, RecursionError):
             return False
 
     def turns_alone(self, atom: int) -> bool:
-        """True if reversing the sense of this ring atom alone gives the same compound or its mirror image."""
+        """True if reversing the sense of this atom alone gives the same compound or its mirror image."""
         centre = self._e.centre
-        if not centre[atom]:
-            return False
         kept = centre[atom]
+        if not kept:
+            return False
         try:
-            for sign in (1, -1):
-                # an operation that fixes the atom and does there the opposite of what it does elsewhere
-                centre[atom] = 0
-                self._known.clear()
-                if self.carries(atom, atom, sign, 1):
-                    return True
+            # an operation that fixes the atom and does there the opposite of what it does elsewhere
+            centre[atom] = 0
+            self._known.clear()
+            return self.carries(atom, atom, 1, 1) or self.carries(atom, atom, -1, 1)
         finally:
             centre[atom] = kept
             self._known.clear()
-        return False
 
     def _matches(self, atom: int, image: int, fixed: Images) -> Iterator[Images]:
-        """All ways to carry the neighbours of ``atom`` to those of ``image``, colours and bond orders kept."""
-        colour, order = self._s.colour, self._s.order
-        free = [n for n in self._s.neighbours[atom] if n not in fixed]
+        """All ways to carry the neighbours of ``atom`` to those of ``image``: equal colours and bonds."""
+        colour = self._s.colour
+        row, target_row = self._s.bonding[atom], self._s.bonding[image]
         used = set(fixed.values())
-        targets = [n for n in self._s.neighbours[image] if n not in used]
-        options = [
-            [t for t in targets if colour[t] == colour[n] and order[image][t] == order[atom][n]] for n in free
-        ]
-        if all(len(o) == 1 for o in options):
-            yield {**fixed, **{n: o[0] for n, o in zip(free, options, strict=True)}}
+        free = [n for n in row if n not in fixed]
+        targets = [t for t in target_row if t not in used]
+        if len(free) == 1 and len(targets) == 1:
+            n, t = free[0], targets[0]
+            if colour[n] == colour[t] and row[n] == target_row[t]:
+                fixed[n] = t
+                yield fixed
             return
-        yield from self._spread(free, options, 0, dict(fixed))
+        options = [[t for t in targets if colour[t] == colour[n] and target_row[t] == row[n]] for n in free]
+        if all(len(o) == 1 for o in options):
+            fixed.update((n, o[0]) for n, o in zip(free, options, strict=True))
+            if len(fixed) == len(set(fixed.values())):
+                yield fixed
+            return
+        yield from self._spread(free, options, 0, fixed)
 
     def _spread(self, free: list[int], options: list[list[int]], at: int, images: Images) -> Iterator[Images]:
         if at == len(free):
@@ -99,28 +121,30 @@ class Search:
             if target not in used:
                 yield from self._spread(free, options, at + 1, {**images, free[at]: target})
 
-    def _settle(
-        self, atom: int, image: int, images: Images, parent: int, sign: int, twist: int, cross: int
-    ) -> bool:
+    def _settle(self, atom: int, image: int, images: Images, demand: Demand) -> bool:
         """Check senses at ``atom`` for this choice and decide every branch outside its ring system and parent."""
         self._steps += 1
         if self._steps > MOST_STEPS:
-            raise SearchLimit
+            raise SearchLimitError
         s = self._s
-        if not self._sense_kept(atom, image, images, sign, cross):
+        if not self._sense_kept(atom, image, images, demand):
             return False
-        if parent >= 0 and twist >= 0 and not self._twist_kept(atom, image, images, parent, twist):
+        parent = demand.parent
+        if demand.twist >= 0 and not self._twist_kept(atom, image, images, demand):
             return False
         ring = s.ring_neighbours[atom]
-        return all(
-            self._branch(atom, n, image, m, sign, self._demand(atom, n, image, m, images, sign, parent, twist, cross))
-            for n, m in images.items()
-            if n != parent and n not in ring
-        )
+        twisted = self._e.has_end[atom] or demand.twist >= 0
+        for n, m in images.items():
+            if n == parent or n in ring:
+                continue
+            twist = self._twist_behind(atom, n, image, m, images, demand) if twisted else NO_DEMAND
+            if twist == IMPOSSIBLE or not self._branch(atom, n, image, m, demand.sign, twist):
+                return False
+        return True
 
-    def _sense_kept(self, atom: int, image: int, images: Images, sign: int, cross: int) -> bool:
+    def _sense_kept(self, atom: int, image: int, images: Images, demand: Demand) -> bool:
         centre = self._e.centre
-        if not centre[atom] and cross < 0:
+        if not centre[atom] and demand.cross < 0:
             return True
         parity = 1
         row = [images[n] for n in self._s.neighbours[atom]]
@@ -129,35 +153,35 @@ class Search:
                 if first > second:
                     parity = -parity
         if centre[atom]:
-            return centre[atom] * centre[image] * parity == sign
-        if self._s.hydrogens[atom] == 2 and (self._s.unsaturated(atom) or self._s.number[atom] == 7):
+            return centre[atom] * centre[image] * parity == demand.sign
+        if self._s.hydrogens[atom] == 2 and self._e.has_end[atom]:
             return True  # =CH2 and amide NH2: settled through the far end of the element
-        return parity * sign == (1 if cross == 0 else -1)
+        return parity * demand.sign == (1 if demand.cross == 0 else -1)
 
-    def _twist_kept(self, atom: int, image: int, images: Images, parent: int, twist: int) -> bool:
+    def _twist_kept(self, atom: int, image: int, images: Images, demand: Demand) -> bool:
         """Far end of an element: its slots must be swapped (1) or not (0) as the near end demands."""
-        end = self._e.ends.get((atom, parent))
+        end = self._e.ends.get((atom, demand.parent))
         if end is None or end.slots[0] == FREE:
             return True
-        other = self._e.ends[(image, images[parent])]
-        return int(images[end.slots[0]] != other.slots[0]) == twist
+        other = self._e.ends.get((image, demand.parent_image))
+        return other is not None and int(images[end.slots[0]] != other.slots[0]) == demand.twist
 
-    def _demand(
-        self, atom: int, n: int, image: int, m: int, images: Images, sign: int, parent: int, twist: int, cross: int
-    ) -> int:
-        """What the far end of the element over bond ``atom``-``n`` must do: 0, 1, or -1 for no demand."""
+    def _twist_behind(self, atom: int, n: int, image: int, m: int, images: Images, demand: Demand) -> int:
+        """What the far end of the element over bond ``atom``-``n`` must do: 0, 1, or no demand."""
         end = self._e.ends.get((atom, n))
         if end is None:
-            passing = parent >= 0 and twist >= 0 and (atom, parent) not in self._e.ends
-            return twist if passing else -1
-        other = self._e.ends[(image, m)]
+            passing = demand.parent >= 0 and (atom, demand.parent) not in self._e.ends
+            return demand.twist if passing else NO_DEMAND
+        other = self._e.ends.get((image, m))
+        if other is None:
+            return IMPOSSIBLE
         if end.slots[0] == FREE:
-            if cross < 0:
-                return -1
-            swap = cross
+            if demand.cross < 0:
+                return NO_DEMAND
+            swap = demand.cross
         else:
             swap = int(images[end.slots[0]] != other.slots[0])
-        turned = self._e.axial[end.element] and sign < 0
+        turned = self._e.axial[end.element] and demand.sign < 0
         return self._e.sense[end.element] ^ self._e.sense[other.element] ^ int(turned) ^ swap
 
     def _branch(self, x: int, p: int, y: int, q: int, sign: int, twist: int) -> bool:
@@ -168,19 +192,20 @@ class Search:
         known = self._known.get(key)
         if known is not None:
             return known
+        demand = Demand(sign, x, y, twist)
+        answer = False
         if self._s.block[p] >= 0:
-            answer = self._block(p, q, (x, y), sign, twist, -1)
+            answer = self._block(p, q, demand)
         else:
-            answer = False
             for images in self._matches(p, q, {x: y}):
-                if self._settle(p, q, images, x, sign, twist, -1):
+                if self._settle(p, q, images, demand):
                     answer = True
                     break
         self._known[key] = answer
         return answer
 
     def _order(self, start: int) -> tuple[list[tuple[int, int]], list[list[int]]]:
-        """Ring system of ``start``: (atom, atom before) in walking order, and the atoms complete after each step."""
+        """Ring system of ``start``: (atom, atom before) in walking order; atoms complete after each step."""
         if start in self._orders:
             return self._orders[start]
         ring = self._s.ring_neighbours
@@ -197,76 +222,52 @@ class Search:
         self._orders[start] = (walk, complete)
         return walk, complete
 
-    def _block(self, start: int, image: int, entry: tuple[int, int], sign: int, twist: int, cross: int) -> bool:
+    def _block(self, start: int, image: int, demand: Demand) -> bool:
         """True if the ring system can be carried with ``start`` on ``image`` and all its branches with it."""
-        if self._s.block[image] < 0:
+        s = self._s
+        if s.block[image] < 0 or len(s.ring_neighbours[start]) != len(s.ring_neighbours[image]):
             return False
         walk, complete = self._order(start)
-        ring, order, colour = self._s.ring_neighbours, self._s.order, self._s.colour
         images: Images = {start: image}
-        used = {image}
+        return self._placed(1, walk, complete, images, {image}, demand)
 
-        def finished(at: int) -> bool:
-            for atom in complete[at]:
-                fixed = {n: images[n] for n in ring[atom]}
-                parent = -1
-                if atom == start and entry[0] >= 0:
-                    fixed[entry[0]] = entry[1]
-                    parent = entry[0]
-                own = cross if atom == start else -1
-                need = twist if atom == start else -1
-                if not any(
-                    self._settle(atom, images[atom], m, parent, sign, need, own)
-                    for m in self._matches(atom, images[atom], fixed)
-                ):
-                    return False
-            return at + 1 < len(walk) or self._ring_axes_kept(walk, images, sign)
-
-        def place(at: int) -> bool:
-            if at == len(walk):
+    def _placed(
+        self, at: int, walk: list[tuple[int, int]], complete: list[list[int]], images: Images,
+        used: set[int], demand: Demand,
+    ) -> bool:
+        """Place atom number ``at`` of the walk and all behind it."""
+        if at == len(walk):
+            return not self._e.ring_axes or ring_axes_kept(self._s, self._e, images, demand.sign)
+        ring, bonding, colour = self._s.ring_neighbours, self._s.bonding, self._s.colour
+        atom, before = walk[at]
+        linked = [n for n in ring[atom] if n in images]
+        for target in ring[images[before]]:
+            if target in used or colour[target] != colour[atom]:
+                continue
+            if any(bonding[target].get(images[n]) != bonding[atom][n] for n in linked):
+                continue
+            images[atom] = target
+            used.add(target)
+            if self._complete(complete[at], walk[0][0], images, demand) and self._placed(
+                at + 1, walk, complete, images, used, demand
+            ):
                 return True
-            atom, before = walk[at]
-            linked = [n for n in ring[atom] if n in images]
-            for target in ring[images[before]]:
-                if target in used or colour[target] != colour[atom]:
-                    continue
-                if any(order[target].get(images[n]) != order[atom][n] for n in linked):
-                    continue
-                images[atom] = target
-                used.add(target)
-                if finished(at) and place(at + 1):
-                    return True
-                del images[atom]
-                used.discard(target)
-            return False
+            del images[atom]
+            used.discard(target)
+        return False
 
-        return len(ring[start]) == len(ring[image]) and finished(0) and place(1)
-
-    def _ring_axes_kept(self, walk: list[tuple[int, int]], images: Images, sign: int) -> bool:
-        """Elements inside the ring system (double bonds of large rings)."""
-        ends = self._e.ends
-        for atom, _ in walk:
-            for n in self._s.ring_neighbours[atom]:
-                end = ends.get((atom, n))
-                if end is None:
-                    continue
-                first, last = self._e.places[end.element]
-                if first != atom:
-                    continue
-                back = next((b for b in self._s.ring_neighbours[last] if ends.get((last, b)) and
-                             ends[(last, b)].element == end.element), -1)
-                if back < 0 or last not in images:
-                    continue
-                swaps = [self._ring_swap(a, b, images) for a, b in ((atom, n), (last, back))]
-                other = ends[(images[atom], images[n])]
-                wanted = self._e.sense[end.element] ^ self._e.sense[other.element]
-                wanted ^= int(self._e.axial[end.element] and sign < 0)
-                if (swaps[0] ^ swaps[1]) != wanted:
-                    return False
+    def _complete(self, atoms: list[int], start: int, images: Images, demand: Demand) -> bool:
+        """Settle ring atoms whose ring neighbours are all placed."""
+        for atom in atoms:
+            fixed = {n: images[n] for n in self._s.ring_neighbours[atom]}
+            own = Demand(demand.sign)
+            if atom == start:
+                own = demand
+                if demand.parent >= 0:
+                    fixed[demand.parent] = demand.parent_image
+            if not any(
+                self._settle(atom, images[atom], found, own)
+                for found in self._matches(atom, images[atom], fixed)
+            ):
+                return False
         return True
-
-    def _ring_swap(self, atom: int, inward: int, images: Images) -> int:
-        """1 if the ring member among the slots of an end lands in the other slot."""
-        slots = self._e.ends[(atom, inward)].slots
-        others = self._e.ends[(images[atom], images[inward])].slots
-        return int(any(slot in images and images[slot] == others[1 - i] for i, slot in enumerate(slots)))

@@ -10,7 +10,7 @@ from verify.environments.build import Site, carbon_sites, hydrogen_sites, spin_s
 from verify.environments.couple import with_neighbours
 from verify.environments.model import Environment, EnvironmentSet
 from verify.environments.part import Part
-from verify.environments.skeleton import read_skeleton
+from verify.environments.reading import read_skeleton
 from verify.environments.symmetry import find_orbits
 from verify.environments.vicinity import Doubling
 from verify.structure.model import Structure

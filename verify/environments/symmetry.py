@@ -64,12 +64,10 @@ def _relevant(s: Skeleton, elements: Elements) -> tuple[list[int], list[int]]:
     centres = [c for c in elements.open_centres if not _exchangeable_at(s, search, c, s.neighbours[c])]
     axes = []
     for k in elements.open_axes:
-        tied = False
-        for (end, _), record in elements.ends.items():
-            if record.element == k:
-                tied = tied or record.slots[0] == FREE or (
-                    FREE not in record.slots and _exchangeable_at(s, search, end, list(record.slots)))
-        if not tied:
+        if not any(
+            slots[0] == FREE or (FREE not in slots and _exchangeable_at(s, search, leg[0], slots))
+            for leg, slots in zip(elements.legs[k], elements.slots(k), strict=True)
+        ):
             axes.append(k)
     return centres, axes
 
@@ -117,7 +115,7 @@ def _variants(elements: Elements, centres: list[int], axes: list[int]) -> list[E
 def _apart(s: Skeleton, centres: list[int], axes: list[int], elements: Elements) -> Skeleton:
     """Skeleton in which every open element is its own kind: too fine rather than too coarse."""
     colour = [c * 2 * s.size for c in s.colour]
-    marked = sorted({*centres, *(elements.places[k][0] for k in axes)})
+    marked = sorted({*centres, *(elements.legs[k][0][0] for k in axes)})
     for number, atom in enumerate(marked, start=1):
         colour[atom] += number
     return replace(s, colour=colour)

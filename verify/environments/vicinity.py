@@ -19,7 +19,7 @@ class Doubling:
         for number, why in enumerate(elements.slow):
             if not why or why == "hindered axis" or not _two_rotamers(part, number):
                 continue
-            for atom in _within(s.neighbours, elements.places[number], ROTAMER_REACH):
+            for atom in _within(s.neighbours, (elements.legs[number][0][0], elements.legs[number][1][0]), ROTAMER_REACH):
                 self._near.setdefault(atom, f"{why} rotamer")
 
     def reason(self, atom: int) -> str:
@@ -29,13 +29,11 @@ class Doubling:
 
 def _two_rotamers(part: Part, number: int) -> bool:
     """True if the slots of both ends differ, so that two different rotamers exist."""
-    for (end, _), record in part.elements.ends.items():
-        if record.element != number:
-            continue
-        first, second = record.slots
-        if first == FREE or (second != FREE and part.skeleton.colour[first] == part.skeleton.colour[second]):
-            return False
-    return True
+    colour = part.skeleton.colour
+    return not any(
+        first == FREE or (second != FREE and colour[first] == colour[second])
+        for first, second in part.elements.slots(number)
+    )
 
 
 def _within(neighbours: list[list[int]], starts: tuple[int, int], reach: int) -> list[int]:

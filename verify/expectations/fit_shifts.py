@@ -65,8 +65,8 @@ def build_design(rows: Sequence[Sequence[str]], prior: Sequence[float], least: i
 
 def match(groups: Sequence[Group], estimate: Vector) -> tuple[Vector, Vector]:
     """Targets and weights per row: the n-th lowest estimate of a group takes its n-th lowest shift."""
-    target = np.zeros_like(estimate)
-    weight = np.zeros_like(estimate)
+    target = np.zeros(len(estimate))
+    weight = np.zeros(len(estimate))
     for group in groups:
         rows = np.repeat(group.rows, group.counts)
         ranked = rows[np.argsort(estimate[rows], kind="stable")]

@@ -40,10 +40,11 @@ class Locus:
     """What a finding speaks of, in the record's own terms, before it is turned into a place.
 
     ``pointer`` names the value (RFC 6901), ``span`` the characters inside that value if it is text;
-    ``spectrum`` and ``signal`` count from 0.
+    ``spectrum`` and ``signal`` count from 0. ``on_key`` means the key that ends the pointer, not its value.
     """
 
     pointer: str = ""
     span: Span | None = None
     spectrum: int | None = None
     signal: int | None = None
+    on_key: bool = False

@@ -1,0 +1,1 @@
+"""Checks a chemical structure against its reported NMR peak lists."""
