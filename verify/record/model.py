@@ -7,6 +7,7 @@ from dataclasses import dataclass, field
 from typing import Protocol
 
 from verify.findings.location import Locus, Place
+from verify.findings.problem import Problem
 
 
 @dataclass(frozen=True, slots=True)
@@ -85,3 +86,16 @@ class Record:
     notes: str = ""
     file: str = ""
     extra: Mapping[str, object] = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True)
+class RecordReading:
+    """What became of one record's text. ``record`` is None only where nothing could be made of it; then a
+    problem with ``blocks == "record"`` says why. ``compound`` is never empty: the id, else the folder's name.
+    """
+
+    compound: str
+    file: str
+    record: Record | None
+    problems: tuple[Problem, ...]
+    places: PlaceFinder
