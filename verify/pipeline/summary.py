@@ -8,6 +8,8 @@ from typing import Any
 from verify.assignment.model import Missing, Share, SignalReading, SpectrumAssignment
 from verify.expectations.model import Expectation
 from verify.peaklist.model import PeakList
+from verify.rulebook.model import RecordCase
+from verify.structure.composition import formula_text
 
 
 def _rounded(value: float, digits: int = 2) -> float:
@@ -78,3 +80,16 @@ def summarise(
         "missing": [_missing(missing, by_index) for missing in assignment.missing],
         "repairs": [repair.words for repair in assignment.repairs],
     }
+
+
+def summary_of(case: RecordCase) -> dict[str, Any]:
+    """What the record is about, for reports and for rules over the whole registry."""
+    structure = case.structure
+    spectra = [
+        {"nucleus": s.spectrum.nucleus, "signals": len(s.peaks.signals),
+         "status": s.assignment.status if s.assignment else "not-judged"}
+        for s in case.spectra
+    ]
+    if structure is None:
+        return {"spectra": spectra}
+    return {"smiles": structure.smiles, "formula": formula_text(structure.formula), "spectra": spectra}
