@@ -78,7 +78,7 @@ def test_what_anyone_would_write_is_nearly_free(blocks: Blocks, lines: tuple[int
         (METHOXY, (3,), (7.1,)),
         (METHOXY, (2,), ()),
         (TRANS_CROTYL, (4,), (15.5,)),
-        (TRANS_CROTYL, (2, 4), (10.0, 2.1)),
+        (TRANS_CROTYL, (2, 4), (7.0, 2.1)),
         (ARYL_CH, (1,), ()),
         (ARYL_CH, (4,), (7.0,)),
         (HALF_OF_CH2, (1,), ()),
