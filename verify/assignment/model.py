@@ -134,3 +134,14 @@ class SpectrumAssignment:
     exchangeable_excess: float = 0.0
     signals_low: int = 0
     signals_high: int = 0
+
+
+@dataclass(frozen=True, slots=True)
+class RivalFit:
+    """Another structure held against the same lists. ``gain``: nats by which it explains them better than the
+    registered one (negative: worse), summed over the spectra that were judged for both."""
+
+    smiles: str
+    family: str
+    words: str
+    gain: float

@@ -47,6 +47,21 @@ def assign(
     return _assign_lines(structure, mine, peaks, spectrum, solvent)
 
 
+def list_cost(
+    structure: Structure, expectations: tuple[Expectation, ...], peaks: PeakList, solvent: str | None
+) -> float | None:
+    """Cost in nats of the best explanation alone, for comparing structures; None where the list is not judged."""
+    mine = tuple(e for e in expectations if e.environment.nucleus == peaks.nucleus)
+    if not peaks.signals or not mine or sum(e.environment.count for e in mine) > MOST_NUCLEI:
+        return None
+    names = line_names(peaks, solvent)
+    if peaks.nucleus != "1H":
+        return explain_lines(peaks, mine, bool(softening(structure, peaks)), names).cost
+    totals = hydrogen_totals(mine, peaks.signals)
+    prices = price_all(mine, peaks.signals, _hydrogens(structure, mine))
+    return explain(peaks, mine, prices, solvent, totals.factor, names).placement.cost
+
+
 def _hydrogens(structure: Structure, expectations: tuple[Expectation, ...]) -> dict[int, int]:
     """Hydrogens on the carrier of each environment, by environment index."""
     found = {}
@@ -108,10 +123,8 @@ def _line_reading(
 ) -> SignalReading:
     signal = peaks.signals[number]
     rows = found.home[number]
-    shares = tuple(
-        Share(expectations[row].environment.index, expectations[row].environment.count, float(found.costs[row, number]), 0.0)
-        for row in rows
-    )
+    mine = [(row, expectations[row].environment) for row in rows]
+    shares = tuple(Share(e.index, e.count, float(found.costs[row, number]), 0.0) for row, e in mine)
     near = [e for e in expectations if distance(e.window, signal.low, signal.high) <= 3.0 * e.window.scale]
     attached = {e.environment.attached_h for e in near}
     wrong = signal.attached_h is not None and bool(near) and signal.attached_h not in attached
@@ -121,6 +134,12 @@ def _line_reading(
         expected_window="; ".join(window_words(expectations[row]) for row in rows),
         solvent_line=solvent_line, attached_h_wrong=wrong,
     )
+
+
+def _missing_line(expectation: Expectation) -> Missing:
+    environment = expectation.environment
+    vanishes = bool(environment.may_vanish)
+    return Missing(environment.index, environment.count, window_words(expectation), expectation.words, "", vanishes)
 
 
 def _assign_lines(
@@ -133,11 +152,7 @@ def _assign_lines(
         _line_reading(n, found, expectations, peaks, names[n]) for n in range(len(peaks.signals))
     )
     readings = _name_impurities(readings, peaks, solvent)
-    missing = tuple(
-        Missing(expectations[row].environment.index, expectations[row].environment.count,
-                window_words(expectations[row]), expectations[row].words, "", bool(expectations[row].environment.may_vanish))
-        for row in found.lost
-    )
+    missing = tuple(_missing_line(expectations[row]) for row in found.lost)
     named = {r.signal for r in readings if r.impurity or (r.solvent_line and not r.shares)}
     return SpectrumAssignment(
         nucleus=peaks.nucleus, spectrum=spectrum, status="explained", readings=readings, missing=missing,

@@ -6,14 +6,13 @@ from verify.assignment.stage import assign
 from verify.environments.model import EnvironmentSet
 from verify.environments.stage import find_environments
 from verify.expectations.model import Expectation
-from verify.expectations.solvent import solvent_name
 from verify.expectations.stage import expect
 from verify.findings.finding import Deviation
 from verify.findings.problem import Problem
 from verify.findings.result import RecordResult, verdict_of
 from verify.peaklist.model import PeakList
 from verify.peaklist.stage import read_peak_list, read_signals
-from verify.pipeline.reach import proton_field, unassessed_because
+from verify.pipeline.reach import solvent_and_field, unassessed_because
 from verify.pipeline.summary import summarise, summary_of
 from verify.record.model import Record, RecordReading, SpectrumText
 from verify.rulebook.model import RecordCase, Rulebook, SpectrumCase
@@ -74,8 +73,7 @@ def _spectra(
     shared: dict[tuple[str | None, float | None], tuple[Expectation, ...]] = {}
     cases = []
     for number, (spectrum, peaks) in enumerate(zip(record.spectra, lists, strict=True)):
-        solvent = solvent_name(spectrum.solvent or peaks.solvent) or None
-        field = proton_field(spectrum.field_mhz or peaks.field_mhz, spectrum.nucleus)
+        solvent, field = solvent_and_field(spectrum, peaks)
         if (solvent, field) not in shared:
             shared[solvent, field] = expect(structure, environments, solvent, field)
         expectations = shared[solvent, field]

@@ -2,6 +2,9 @@
 
 from __future__ import annotations
 
+from verify.expectations.solvent import solvent_name
+from verify.peaklist.model import PeakList
+from verify.record.model import SpectrumText
 from verify.rulebook.model import RecordCase
 
 # Ratios of resonance frequencies to that of 1H. source: IUPAC recommendations 2001/2008 (Xi scale, rounded)
@@ -28,6 +31,12 @@ def proton_field(field_mhz: float | None, nucleus: str) -> float | None:
     if nucleus in ("13C", "31P") and proton > RAREST_MAGNET_MHZ:
         proton = field_mhz
     return round(proton, -1) if proton > 95.0 else proton
+
+
+def solvent_and_field(spectrum: SpectrumText, peaks: PeakList) -> tuple[str | None, float | None]:
+    """Canonical solvent and proton frequency (MHz): the record's own keys first, then what the text says."""
+    solvent = solvent_name(spectrum.solvent or peaks.solvent) or None
+    return solvent, proton_field(spectrum.field_mhz or peaks.field_mhz, spectrum.nucleus)
 
 
 def unassessed_because(case: RecordCase) -> str:
