@@ -62,7 +62,8 @@ def problems(draw):
 @given(problems())
 def test_the_integer_program_finds_the_cheapest_placement(problem):
     costs, pieces, boxes = problem
-    assert integer(costs, pieces, boxes).cost == pytest.approx(enumerate_best(costs, pieces, boxes), abs=1e-6)
+    # HiGHS keeps constraints to 1e-6 and a nat of slack weighs 7
+    assert integer(costs, pieces, boxes).cost == pytest.approx(enumerate_best(costs, pieces, boxes), abs=1e-4)
 
 
 @settings(max_examples=60, deadline=None)

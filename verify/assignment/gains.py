@@ -9,9 +9,9 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from verify.assignment.boxes import Boxes
 from verify.assignment.cost import Prices
 from verify.assignment.proton import Explanation
-from verify.assignment.boxes import Boxes
 from verify.assignment.solver import linear
 
 Matrix = NDArray[np.float64]
@@ -48,7 +48,7 @@ def gains(explanation: Explanation, prices: Prices) -> tuple[Matrix, Matrix]:
     boxes = _stated(explanation)
     _, base = linear(explanation.costs, explanation.pieces, boxes)
     share = np.array([p.nuclei for p in explanation.pieces], dtype=float)
-    totals = {row: 0.0 for row in explanation.rows}
+    totals = dict.fromkeys(explanation.rows, 0.0)
     for row, nuclei in zip(explanation.rows, share, strict=True):
         totals[row] += nuclei
     scale = share / np.array([totals[row] for row in explanation.rows])

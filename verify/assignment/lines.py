@@ -7,8 +7,8 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
-from verify.assignment.cost import shift_price
 from verify.assignment.boxes import match
+from verify.assignment.cost import shift_price
 from verify.expectations.model import Expectation
 from verify.peaklist.model import PeakList, Signal
 

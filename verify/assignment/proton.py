@@ -7,9 +7,9 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from verify.assignment.boxes import SLACK, Boxes, Placement
 from verify.assignment.cost import Prices
 from verify.assignment.pieces import Piece, carrier_groups, whole_groups
-from verify.assignment.boxes import SLACK, Boxes, Placement
 from verify.assignment.solver import place
 from verify.expectations.model import Expectation
 from verify.peaklist.model import PeakList, Signal

@@ -2,8 +2,8 @@
 
 from __future__ import annotations
 
-from verify.assignment.model import Missing, Repair, SignalReading, Totals
 from verify.assignment.boxes import SLACK
+from verify.assignment.model import Missing, Repair, SignalReading, Totals
 from verify.peaklist.model import Signal
 
 WORTH_SAYING = 2.0

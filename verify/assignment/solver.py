@@ -144,7 +144,7 @@ def integer(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes, *, divisible
     capacity = boxes.capacity
     program = _Program(_columns(costs), len(pieces), len(capacity))
     constraints = _constraints(program, pieces, boxes)
-    whole_columns = np.zeros(program.width)
+    whole_columns = np.zeros(program.width, dtype=np.uint8)
     if not divisible:
         whole_columns[: len(program.pairs) + program.pieces] = 1
     upper = np.full(program.width, np.inf)
@@ -156,8 +156,10 @@ def integer(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes, *, divisible
     placed = np.zeros(costs.shape)
     if solution.x is None:
         return as_placement(placed, capacity, float("inf"), exact=False)
+    # The solver calls a value whole when it is within 1e-6 of a whole number.
+    values = np.where(whole_columns == 1, np.rint(solution.x), solution.x)
     for number, (p, s) in enumerate(program.pairs):
-        placed[p, s] = solution.x[number] * pieces[p].nuclei
+        placed[p, s] = values[number] * pieces[p].nuclei
     return as_placement(placed, capacity, float(solution.fun), exact=solution.status == 0)
 
 
