@@ -14,7 +14,8 @@ from verify.expectations.tables import read_table
 
 @dataclass(frozen=True, slots=True)
 class ShiftClass:
-    """``windows``: nucleus, or solvent for exchangeable hydrogen, to (low, high) in ppm. ``size``: atoms of the pattern."""
+    """``windows``: nucleus, or solvent for exchangeable hydrogen, to (low, high) in ppm. ``size``: atoms of the
+    pattern. ``elements``: atomic numbers without which it cannot match."""
 
     label: str
     pattern: Chem.Mol
@@ -54,7 +55,7 @@ def shift_classes(table: str) -> tuple[ShiftClass, ...]:
 
 def classes_of_atoms(mol: Chem.Mol, table: str) -> dict[int, list[ShiftClass]]:
     """For every atom the classes whose first pattern atom it can be, in the order of the table."""
-    present = {a.GetAtomicNum() for a in mol.GetAtoms()}
+    present = {mol.GetAtomWithIdx(n).GetAtomicNum() for n in range(mol.GetNumAtoms())}
     found: dict[int, list[ShiftClass]] = {}
     for shift_class in shift_classes(table):
         if not shift_class.elements <= present:

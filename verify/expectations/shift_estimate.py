@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Container
+from collections.abc import Container, Sequence
+from functools import lru_cache
 
 from verify.expectations.model import Increment, Window
 from verify.expectations.surroundings import Surroundings, terms
@@ -29,6 +30,7 @@ def depth_key(found: Surroundings, atom: int, known: Container[str]) -> tuple[st
     return f"{fine} {depth}", f"{found.coarse[atom]} {depth}", f"* {depth}"
 
 
+@lru_cache(maxsize=65536)
 def _bonds_away(term: str) -> str:
     """Words for the trail: which part of the surroundings a term speaks of."""
     if term[0] in STEPS:
@@ -42,12 +44,14 @@ def _bonds_away(term: str) -> str:
     return f"{digits[-1]} bond{'s' if digits[-1] != '1' else ''} away"
 
 
-def estimate(found: Surroundings, atom: int, table: ShiftTable) -> Window:
-    """Window of a nucleus at or on ``atom``; ppm."""
+def estimate(
+    found: Surroundings, atom: int, table: ShiftTable, codes: Sequence[str] | None = None
+) -> Window:
+    """Window of a nucleus at or on ``atom``; ppm. ``codes``: its ``terms``, where they are known already."""
     known = table.increments
     parts: dict[str, int] = {}
     total = 0
-    for term in terms(found, atom):
+    for term in terms(found, atom) if codes is None else codes:
         value = known.get(term)
         if value:
             total += value
@@ -61,7 +65,6 @@ def estimate(found: Surroundings, atom: int, table: ShiftTable) -> Window:
             break
     lowest, highest = FURTHEST[table.nucleus]
     centre = min(max(centre, lowest), highest)
-    trail = (Increment("base", table.base, table.source),) + tuple(
-        Increment(label, value / 100.0, table.source) for label, value in parts.items()
-    )
+    steps = [Increment(label, value / 100.0, table.source) for label, value in parts.items()]
+    trail = (Increment("base", table.base, table.source), *steps)
     return Window(centre - width.reach, centre + width.reach, centre, width.scale, trail)

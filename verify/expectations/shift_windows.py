@@ -10,12 +10,16 @@ from verify.environments.model import Environment, EnvironmentSet
 from verify.expectations.model import Increment, Window
 from verify.expectations.shift_classes import ShiftClass, classes_of_atoms
 from verify.expectations.shift_estimate import estimate
-from verify.expectations.surroundings import Surroundings, survey
+from verify.expectations.surroundings import Surroundings, survey, terms
 from verify.expectations.tables import shift_table
 from verify.structure.model import Structure
 
-NOTHING_KNOWN = {"1H": Window(-30.0, 30.0, 5.0, 8.0, (), False), "13C": Window(-60.0, 260.0, 100.0, 60.0, (), False),
-                 "19F": Window(-300.0, 120.0, -110.0, 80.0, (), False), "31P": Window(-300.0, 300.0, 20.0, 80.0, (), False)}
+NOTHING_KNOWN = {
+    "1H": Window(-30.0, 30.0, 5.0, 8.0, (), False),
+    "13C": Window(-60.0, 260.0, 100.0, 60.0, (), False),
+    "19F": Window(-300.0, 120.0, -110.0, 80.0, (), False),
+    "31P": Window(-300.0, 300.0, 20.0, 80.0, (), False),
+}
 # Half of a class window counts as this many standard deviations (common practice: windows hold about nine in ten).
 CLASS_WIDTHS = 1.65
 CLASS_MARGIN = {"1H": 0.6, "13C": 9.0}
@@ -24,9 +28,10 @@ REACH_WIDTHS = {"1H": 4.0, "13C": 4.5}
 LEAST_REACH = {"1H": 0.9, "13C": 12.0}
 # Aromatic and other strongly anisotropic solvents move signals against CDCl3 (common practice; ppm added to the scale).
 SOLVENT_WIDTH = {"C6D6": 0.30, "toluene-d8": 0.30, "pyridine-d5": 0.30, "D2O": 0.12, "TFA-d": 0.25, "DMSO-d6": 0.05}
-SPECIAL_ELEMENTS = frozenset({"Sn", "Hg", "Pb", "Tl", "Li", "Mg", "Zn", "Al", "Fe", "Pd", "Pt", "Ru", "Rh", "Ir", "Ni", "Co"})
+SPECIAL_ELEMENTS = frozenset(
+    ["Sn", "Hg", "Pb", "Tl", "Li", "Mg", "Zn", "Al", "Fe", "Pd", "Pt", "Ru", "Rh", "Ir", "Ni", "Co"]
+)
 EXCHANGEABLE_DEFAULT = (0.5, 13.0)
-SLOPE = "fitted increments"
 
 
 def shift_windows(structure: Structure, environments: EnvironmentSet, solvent: str | None) -> tuple[Window, ...]:
@@ -39,6 +44,8 @@ def shift_windows(structure: Structure, environments: EnvironmentSet, solvent: s
     acids = classes_of_atoms(mol, "exchangeables") if exchanging else {}
     hetero = {n: classes_of_atoms(mol, f"shift_hetero:{n}") for n in ("19F", "31P") if n in nuclei}
     metal = bool(set(structure.formula) & SPECIAL_ELEMENTS)
+    codes: dict[int, list[str]] = {}
+    known: dict[tuple[int, str], Window] = {}
     windows = []
     for environment in environments.all:
         carrier = environment.carriers[0]
@@ -49,14 +56,21 @@ def shift_windows(structure: Structure, environments: EnvironmentSet, solvent: s
         elif mol.GetAtomWithIdx(carrier).GetAtomicNum() != 6 or found is None:
             windows.append(_hydride(mol.GetAtomWithIdx(carrier).GetSymbol()))
         else:
-            window = carbon_window(found, carrier, environment.nucleus, classes.get(carrier, ()))
-            windows.append(_widened(window, environment, solvent, metal))
+            key = (carrier, environment.nucleus)
+            if key not in known:
+                if carrier not in codes:
+                    codes[carrier] = terms(found, carrier)
+                window = carbon_window(found, carrier, environment.nucleus, classes.get(carrier, ()), codes[carrier])
+                known[key] = _widened(window, environment, solvent, metal)
+            windows.append(known[key])
     return tuple(windows)
 
 
-def carbon_window(found: Surroundings, carrier: int, nucleus: str, classes: Sequence[ShiftClass]) -> Window:
-    """Window of a carbon ("13C") or of the hydrogen on it ("1H"), in ppm."""
-    fitted = estimate(found, carrier, shift_table(nucleus))
+def carbon_window(
+    found: Surroundings, carrier: int, nucleus: str, classes: Sequence[ShiftClass], codes: Sequence[str]
+) -> Window:
+    """Window of a carbon ("13C") or of the hydrogen on it ("1H"), in ppm. ``codes``: ``terms`` of the carbon."""
+    fitted = estimate(found, carrier, shift_table(nucleus), codes)
     known = [c for c in classes if nucleus in c.windows]
     if not known:
         return _believed(fitted, nucleus, fitted.centre, fitted.centre)
@@ -79,7 +93,8 @@ def _joined(fitted: Window, low: float, high: float, chosen: ShiftClass, nucleus
     centre = (fitted.centre * weight + middle * other) / (weight + other)
     # The two are not independent: the joint width is kept above that of independent ones.
     scale = max(sqrt(1.6 / (weight + other)), NARROWEST[nucleus])
-    step = Increment(f"handbook class: {chosen.label}", centre - fitted.centre, f"rules/tables/shift_classes ({chosen.source})")
+    source = f"rules/tables/shift_classes ({chosen.source})"
+    step = Increment(f"handbook class: {chosen.label}", centre - fitted.centre, source)
     return replace(fitted, centre=centre, scale=min(scale, fitted.scale), trail=(*fitted.trail, step))
 
 
