@@ -166,7 +166,12 @@ def _map_block_lines(text: str, start: int, style: str, indent: int, chomping: s
         if content < line.start() + indent or content == line_end:
             break
         blank = text[content] in " \t"
-        folds = style == ">" and leading is not None and _normal(leading[2]) == "\n" and not (after_blank or blank)
+        folds = (
+            style == ">"
+            and leading is not None
+            and _normal(leading[2]) == "\n"
+            and not (after_blank or blank)
+        )
         if leading is not None and not (folds and trailing):
             out.add(" " if folds else _normal(leading[2]), leading[0], leading[1])
         out.add_breaks(trailing)

@@ -32,7 +32,9 @@ class ComponentText:
 class SpectrumText:
     """One spectrum as reported: ``report`` (free text) or ``signals`` (structured), never both.
 
-    ``signals`` are the raw mappings of the record: keys shift | low/high, multiplicity, couplings, nuclei, note.
+    ``signals`` are the raw mappings of the record: keys shift | low/high, multiplicity, couplings, nuclei,
+    note. The ``default_`` fields are the registry's: they hold where neither the record's keys nor the text say
+    otherwise.
     """
 
     nucleus: str
@@ -42,6 +44,9 @@ class SpectrumText:
     field_mhz: float | None = None
     solvent: str | None = None
     temperature_k: float | None = None
+    default_solvent: str | None = None
+    default_field_mhz: float | None = None
+    default_temperature_k: float | None = None
 
 
 @dataclass(frozen=True, slots=True)

@@ -16,8 +16,8 @@ _LINE_END = re.compile(r"\r\n|\r|\n")
 class SourceMap:
     """Places of the values of one document.
 
-    A span under the empty pointer counts in the text of the whole file: it is how a fault of a file that could not be
-    loaded is placed. Lines end at LF, CRLF or CR; a byte order mark is no column.
+    A span under the empty pointer counts in the text of the whole file: it is how a fault of a file that could
+    not be loaded is placed. Lines end at LF, CRLF or CR; a byte order mark is no column.
     """
 
     def __init__(self, text: str, file: str, root: Node | None) -> None:
@@ -29,16 +29,16 @@ class SourceMap:
         self._maps: dict[tuple[int, int], CharacterMap | None] = {}
 
     def place(self, locus: Locus) -> Place:
-        """The characters that ``locus`` speaks of; the nearest existing parent where its pointer leads nowhere."""
+        """The characters that ``locus`` speaks of; the nearest parent there is where its pointer leads nowhere."""
         if locus.on_key:
             return self.key_place(locus.pointer)
         if locus.pointer == "" and locus.span is not None:
-            return self._between(locus.span.start, locus.span.end, "")
+            return self.between(locus.span.start, locus.span.end, "")
         node, complete = self._find(locus.pointer)
         if node is None:
-            return self._between(0, 0, locus.pointer)
+            return self.between(0, 0, locus.pointer)
         start, end = self._extent(node, locus.span if complete else None)
-        return self._between(start, end, locus.pointer)
+        return self.between(start, end, locus.pointer)
 
     def key_place(self, pointer: str) -> Place:
         """The key that ends ``pointer``; for an item of a list, or where there is no such key, its value."""
@@ -47,7 +47,12 @@ class SourceMap:
         span = node.keys.get(unescape(token)) if node is not None and complete and pointer else None
         if span is None:
             return self.place(Locus(pointer))
-        return self._between(span[0], span[1], pointer)
+        return self.between(span[0], span[1], pointer)
+
+    def typed(self, pointer: str) -> str | None:
+        """The text of a scalar as it was typed, before it became a number; None where no scalar stands."""
+        node, complete = self._find(pointer)
+        return node.value if node is not None and complete and node.is_scalar else None
 
     def line_of(self, offset: int) -> int:
         """Line (from 1) of an offset in the file's text."""
@@ -89,7 +94,8 @@ class SourceMap:
             self._line_starts = [0, *(found.end() for found in _LINE_END.finditer(self.text))]
         return self._line_starts
 
-    def _between(self, start: int, end: int, pointer: str) -> Place:
+    def between(self, start: int, end: int, pointer: str) -> Place:
+        """The place of the file's characters ``[start, end)``; offsets beyond its end are drawn to it."""
         limit = len(self.text)
         start = min(max(start, 0), limit)
         end = min(max(end, start), limit)
@@ -108,14 +114,31 @@ class ValuePlaces:
         self._data = data
 
     def place(self, locus: Locus) -> Place | None:
-        """Line and column inside the text at the pointer, with an empty file; None where no text stands there."""
+        """Line and column inside the text at the pointer, with an empty file; None where no text stands."""
         value = self._data
         for token in locus.pointer.split("/")[1:]:
             value = _child(value, unescape(token))
         if not isinstance(value, str) or locus.on_key:
             return None
-        span = locus.span or Span(0, len(value))
-        return SourceMap(value, "", None)._between(span.start, span.end, locus.pointer)
+        return _inside(value, locus)
+
+
+class TextPlaces:
+    """Places of a record whose texts are known by their pointers only; lines count inside each text."""
+
+    def __init__(self, texts: Mapping[str, str]) -> None:
+        """``texts`` by JSON Pointer."""
+        self._texts = texts
+
+    def place(self, locus: Locus) -> Place | None:
+        """Line and column inside the text at the pointer, with an empty file; None where no text stands."""
+        text = self._texts.get(locus.pointer)
+        return None if text is None or locus.on_key else _inside(text, locus)
+
+
+def _inside(text: str, locus: Locus) -> Place:
+    span = locus.span or Span(0, len(text))
+    return SourceMap(text, "", None).between(span.start, span.end, locus.pointer)
 
 
 def _child(value: object, key: str) -> object:

@@ -1,7 +1,8 @@
 """Plain YAML scalars read by the core schema of YAML 1.2.2, section 10.3, and nothing beyond it.
 
-YAML 1.1 would turn ``on`` and ``yes`` into booleans, ``12:30`` into 750 and ``1_000`` into 1000; a compound id or a
-batch typed that way must stay what was typed. ``.inf`` and ``.nan`` stay text: no quantity of a record can be either.
+YAML 1.1 would turn ``on`` and ``yes`` into booleans, ``12:30`` into 750 and ``1_000`` into 1000; a compound id or
+a batch typed that way must stay what was typed. ``.inf``, ``.nan`` and numbers beyond a double stay text: no
+quantity of a record can be any of them.
 """
 
 from __future__ import annotations
@@ -43,7 +44,8 @@ def resolve_plain(text: str) -> str | int | float | bool | None:
     if _INTEGER.match(text):
         return int(text)
     if _DECIMAL.match(text):
-        return float(text)
+        number = float(text)
+        return number if abs(number) != float("inf") else text
     if _OCTAL.match(text):
         return int(text[2:], 8)
     if _HEXADECIMAL.match(text):
