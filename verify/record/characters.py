@@ -15,8 +15,9 @@ _LINE = re.compile("([^\r\n\x85\u2028\u2029]*)(\r\n|[\r\n\x85\u2028\u2029]|\\Z)"
 _HEADER = re.compile(r"[|>]([-+1-9]*)[^\r\n]*(?:\r\n|[\r\n]|\Z)")
 _ESCAPE = re.compile(r"\\(?:x[0-9a-fA-F]{2}|u[0-9a-fA-F]{4}|U[0-9a-fA-F]{8}|[^\r\n])")
 _SHORT = {
-    "0": "\0", "a": "\a", "b": "\b", "t": "\t", "\t": "\t", "n": "\n", "v": "\v", "f": "\f", "r": "\r", "e": "\x1b",
-    " ": " ", '"': '"', "/": "/", "\\": "\\", "N": "\x85", "_": "\xa0", "L": "\u2028", "P": "\u2029",
+    "0": "\0", "a": "\a", "b": "\b", "t": "\t", "\t": "\t", "n": "\n", "v": "\v", "f": "\f", "r": "\r",
+    "e": "\x1b", " ": " ", '"': '"', "/": "/", "\\": "\\",
+    "N": "\x85", "_": "\xa0", "L": "\u2028", "P": "\u2029",
 }  # fmt: skip
 
 
@@ -56,11 +57,9 @@ def map_characters(text: str, start: int, end: int, style: str, value: str) -> C
     """The map of one scalar that stands in ``text[start:end]``; None where it cannot be rebuilt exactly."""
     begin = skip_properties(text, start) if start < end else start
     if style in ("|", ">"):
-        return _map_block(text, begin, style, value)
-    if style == "":
-        found = _map_flow(text, begin, end, style)
-    else:
-        found = _map_flow(text, begin + 1, end - 1, style)
+        return _map_block(text[:end], begin, style, value)
+    quote = 0 if style == "" else 1
+    found = _map_flow(text, begin + quote, end - quote, style)
     return found if "".join(found.characters) == value else None
 
 
@@ -134,18 +133,33 @@ def _fold(out: CharacterMap, breaks: list[tuple[int, int, str]], *, escaped: boo
 
 
 def _map_block(text: str, start: int, style: str, value: str) -> CharacterMap | None:
-    """Literal and folded blocks. The indentation is not in the event: take the first that gives the value."""
+    """Literal and folded blocks."""
     header = _HEADER.match(text, start)
     if header is None:
         return None
-    first = re.compile(r"(?:[ ]*(?:\r\n|[\r\n]))*([ ]*)").match(text, header.end())
-    widest = len(first.group(1)) if first else 0
     chomping = next((c for c in header.group(1) if c in "+-"), "")
-    for indent in range(widest, -1, -1):
-        found = _map_block_lines(text, header.end(), style, indent, chomping)
-        if "".join(found.characters) == value:
-            return found
-    return None
+    indent = _indentation(text, header.end(), value)
+    found = _map_block_lines(text, header.end(), style, indent, chomping)
+    return found if "".join(found.characters) == value else None
+
+
+def _indentation(text: str, start: int, value: str) -> int:
+    """The blanks that each line of a block was indented by, which the parser does not tell.
+
+    The value begins with one break for each blank line; its first other line keeps
+    the blanks beyond the indentation.
+    """
+    body = value.lstrip("\n\u2028\u2029")
+    blank_lines = len(value) - len(body)
+    widest = 0
+    for number, line in enumerate(_LINE.finditer(text, start)):
+        blanks = len(line.group(1)) - len(line.group(1).lstrip(" "))
+        if body and number == blank_lines:
+            return blanks - (len(body) - len(body.lstrip(" ")))
+        widest = max(widest, blanks)
+        if line.end() == len(text):
+            break
+    return widest
 
 
 def _map_block_lines(text: str, start: int, style: str, indent: int, chomping: str) -> CharacterMap:

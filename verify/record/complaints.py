@@ -51,7 +51,7 @@ def explain(error: MarkedYAMLError, text: str) -> Fault:
     start = min(mark.index, len(text)) if mark else len(text)
     if "unexpected end of stream" in problem and "quoted" in (error.context or ""):
         return _at(error.context_mark or mark, "the quote that opens here is never closed", "a closing quote")
-    if "cannot start any token" in problem:
+    if "cannot start any token" in problem or "tab character" in problem:
         return _unfit_character(text, start)
     for words, (message, expected) in _PLAIN_WORDS.items():
         if problem.startswith(words):

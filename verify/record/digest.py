@@ -15,7 +15,7 @@ _NOT_MEANING = frozenset(
 
 
 def digest_of(record: Record) -> str:
-    """SHA-256 (hex) over the record's values: key order, quoting, comments, and ``1`` or ``1.0`` do not matter.
+    """SHA-256 (hex) over the record's values: key order, quoting, comments, ``1`` or ``1.0`` do not matter.
 
     The texts of the lists count character by character, and a MOL file by its text, not by its path.
     """

@@ -11,31 +11,24 @@ from dataclasses import dataclass, field
 import yaml
 from yaml.events import (
     AliasEvent,
+    CollectionEndEvent,
+    CollectionStartEvent,
     DocumentStartEvent,
     Event,
-    MappingEndEvent,
     MappingStartEvent,
     ScalarEvent,
-    SequenceEndEvent,
-    SequenceStartEvent,
 )
 
 from verify.record.characters import skip_properties
 from verify.record.complaints import explain
 from verify.record.decoding import Fault
 from verify.record.nodes import Node
-from verify.record.scalars import resolve_plain
+from verify.record.scalars import is_collection_tag, resolve_plain, resolve_tagged
 
 DEEPEST = 20
 HEAVIEST = 100_000  # values of a document after its aliases are expanded; long texts weigh more
 _CHARACTERS_PER_WEIGHT = 64
-_TAG = "tag:yaml.org,2002:"
-_TYPED_TAGS: dict[str, tuple[type, ...]] = {
-    _TAG + "int": (int,),
-    _TAG + "float": (int, float),
-    _TAG + "bool": (bool,),
-    _TAG + "null": (type(None),),
-}
+_NO_KEY = "a list or a group of keys stands where a key is expected"
 _Parser = getattr(yaml, "CBaseLoader", yaml.BaseLoader)  # libyaml where PyYAML was built with it
 
 
@@ -60,17 +53,22 @@ class RefusedError(Exception):
 class _Frame:
     """A collection that is still open: its data, its node, and the key that waits for a value."""
 
-    __slots__ = ("anchor", "before", "height", "key", "list", "map", "node", "skip")
+    __slots__ = ("anchor", "before", "flow", "height", "key", "list", "map", "node", "skip")
 
-    def __init__(self, node: Node, anchor: str | None, before: int) -> None:
+    def __init__(self, node: Node, anchor: str | None, before: int, flow: bool) -> None:
         self.node = node
         self.anchor = anchor
         self.before = before
+        self.flow = flow
         self.height = 1
         self.map: dict[str, object] | None = {} if node.style == "map" else None
         self.list: list[object] = []
         self.key: str | None = None
         self.skip = False
+
+    @property
+    def waits_for_key(self) -> bool:
+        return self.map is not None and self.key is None
 
     @property
     def data(self) -> object:
@@ -109,125 +107,100 @@ class _Loader:
 
     def take(self, event: Event) -> None:
         """Work one event into the document."""
-        kind = type(event)
-        if kind is ScalarEvent:
+        if isinstance(event, ScalarEvent):
             self._scalar(event)
-        elif kind is MappingStartEvent or kind is SequenceStartEvent:
-            self._open(event, "map" if kind is MappingStartEvent else "seq")
-        elif kind is MappingEndEvent or kind is SequenceEndEvent:
+        elif isinstance(event, CollectionStartEvent):
+            self._open(event, "map" if isinstance(event, MappingStartEvent) else "seq")
+        elif isinstance(event, CollectionEndEvent):
             self._close(event)
-        elif kind is AliasEvent:
+        elif isinstance(event, AliasEvent):
             self._alias(event)
-        elif kind is DocumentStartEvent:
+        elif isinstance(event, DocumentStartEvent):
             self.documents += 1
             if self.documents > 1:
                 self._refuse(
-                    event, "record-many-documents", 'a second document begins here ("---")', "one record"
+                    event, "record-many-documents", 'a second record begins here ("---")', "one record"
                 )
 
     def _scalar(self, event: ScalarEvent) -> None:
         text, style = event.value, event.style or ""
-        node = Node(event.start_mark.index, event.end_mark.index, style, text)
+        start, end = _offsets(event)
+        node = Node(start, end, style, text)
         self._grow(event, 1 + len(text) // _CHARACTERS_PER_WEIGHT)
         value: object = text if style else resolve_plain(text)
         if event.tag is not None:
-            value = self._tagged(event, style)
+            try:
+                value = resolve_tagged(event.tag, text)
+            except ValueError as error:
+                self._refuse(event, "record-tag", str(error), "a plain value without a tag")
         if event.anchor:
             self.anchors[event.anchor] = (value, node, 0)
-        self._attach(value, node, 0)
+        self._attach(value, node, 0, (start, end))
 
-    def _tagged(self, event: ScalarEvent, style: str) -> object:
-        """A scalar with an explicit tag of the core schema; any other tag is refused."""
-        if event.tag in (_TAG + "str", "!"):
-            return event.value
-        allowed = _TYPED_TAGS.get(event.tag)
-        value = resolve_plain(event.value)
-        if allowed is None:
-            self._refuse(
-                event, "record-tag", f"the tag {event.tag!r} is not allowed", "a plain value without a tag"
-            )
-        elif type(value) not in allowed or (style and value == ""):
-            self._refuse(
-                event, "record-tag", f"the value does not fit its tag {event.tag!r}", "a value without a tag"
-            )
-        return value
-
-    def _open(self, event: MappingStartEvent | SequenceStartEvent, style: str) -> None:
-        if event.tag not in (None, "!", f"{_TAG}{style}"):
-            self._refuse(
-                event, "record-tag", f"the tag {event.tag!r} is not allowed", "a plain value without a tag"
-            )
+    def _open(self, event: CollectionStartEvent, style: str) -> None:
+        if not is_collection_tag(event.tag, style):
+            self._refuse(event, "record-tag", f"the tag {event.tag!r} is not allowed", "no tag")
         if len(self.stack) >= DEEPEST:
             self._refuse_depth(event)
-        if self.stack and self.stack[-1].map is not None and self.stack[-1].key is None:
-            self._refuse(event, "record-syntax", "a key is a list or a group", "a word as key")
-        node = Node(event.start_mark.index, event.end_mark.index, style)
-        frame = _Frame(node, event.anchor, self.weight)
+        if self.stack and self.stack[-1].waits_for_key:
+            self._refuse(event, "record-syntax", _NO_KEY, "a word as key")
+        start, _ = _offsets(event)
+        frame = _Frame(Node(start, start, style), event.anchor, self.weight, bool(event.flow_style))
         self._grow(event, 1)
         self.stack.append(frame)
-        if not event.flow_style:
-            node.end = -1
 
-    def _close(self, event: MappingEndEvent | SequenceEndEvent) -> None:
+    def _close(self, event: CollectionEndEvent) -> None:
         frame = self.stack.pop()
         node = frame.node
-        if node.end >= 0 or not node.children:
-            node.end = event.end_mark.index
-        else:  # the end of a block would reach to the next token, over blank lines and comments
+        if frame.flow or not node.children:
+            node.end = _offsets(event)[1]
+        else:  # the event ends at the next token, behind blank lines and comments
             node.end = max(next(reversed(node.children.values())).end, node.start)
         node.weight = self.weight - frame.before
         if frame.anchor:
             self.anchors[frame.anchor] = (frame.data, node, frame.height)
-        self._attach(frame.data, node, frame.height)
+        self._attach(frame.data, node, frame.height, (node.start, node.end))
 
     def _alias(self, event: AliasEvent) -> None:
-        known = self.anchors.get(event.anchor)
+        known = self.anchors.get(event.anchor or "")
         if known is None:
             inside = any(frame.anchor == event.anchor for frame in self.stack)
             why = "stands inside the value it repeats" if inside else "was not defined above"
-            self._refuse(
-                event,
-                "record-alias-unknown",
-                f"*{event.anchor} {why}",
-                "an anchor defined above, or no alias",
-            )
-        else:
-            value, node, height = known
-            self.aliases += 1
-            if len(self.stack) + height > DEEPEST:
-                self._refuse_depth(event)
-            self._grow(event, node.weight)
-            self._attach(value, node, height, event)
+            self._refuse(event, "record-alias-unknown", f"*{event.anchor} {why}", "an anchor defined above")
+            return
+        value, node, height = known
+        self.aliases += 1
+        if len(self.stack) + height > DEEPEST:
+            self._refuse_depth(event)
+        self._grow(event, node.weight)
+        self._attach(value, node, height, _offsets(event))
 
-    def _attach(self, value: object, node: Node, height: int, alias: AliasEvent | None = None) -> None:
-        """Hand a finished value to the collection it stands in."""
+    def _attach(self, value: object, node: Node, height: int, typed: tuple[int, int]) -> None:
+        """Hand a finished value to the collection it stands in; ``typed`` is where it was typed there."""
         if not self.stack:
             self.loaded.data, self.loaded.root = value, node
             return
         frame = self.stack[-1]
-        if height >= frame.height:
-            frame.height = height + 1
+        frame.height = max(frame.height, height + 1)
         if frame.map is None:
             frame.node.children[str(len(frame.list))] = node
             frame.list.append(value)
         elif frame.key is None:
-            self._key(frame, node, alias)
+            self._key(frame, node, typed)
         else:
             if not frame.skip:
                 frame.map[frame.key] = value
                 frame.node.children[frame.key] = node
             frame.key = None
 
-    def _key(self, frame: _Frame, node: Node, alias: AliasEvent | None) -> None:
+    def _key(self, frame: _Frame, node: Node, typed: tuple[int, int]) -> None:
+        start, end = typed
         if not node.is_scalar:
-            self._refuse(alias, "record-syntax", "a key is a list or a group", "a word as key")
-        start, end = (
-            (node.start, node.end) if alias is None else (alias.start_mark.index, alias.end_mark.index)
-        )
-        if alias is None:
-            start = skip_properties(self.text, start) if start < end and self.text[start] in "&!" else start
-            if node.style in ("'", '"'):
-                start, end = start + 1, end - 1
+            raise RefusedError(Fault("record-syntax", _NO_KEY, start, end, "a word as key"))
+        if start == node.start < end:  # else an alias
+            start = skip_properties(self.text, start) if self.text[start] in "&!" else start
+            quote = 1 if node.style in ("'", '"') else 0
+            start, end = start + quote, end - quote
         key = node.value
         frame.key = key
         frame.skip = key in frame.node.keys
@@ -250,7 +223,11 @@ class _Loader:
         message = f"values are nested deeper than {DEEPEST} levels"
         self._refuse(event, "record-too-deep", message, f"at most {DEEPEST} levels")
 
-    def _refuse(self, event: Event | None, code: str, message: str, expected: str) -> None:
-        start = event.start_mark.index if event is not None else 0
-        end = event.end_mark.index if event is not None else 0
+    def _refuse(self, event: Event, code: str, message: str, expected: str) -> None:
+        start, end = _offsets(event)
         raise RefusedError(Fault(code, message, start, max(end, start + 1), expected))
+
+
+def _offsets(event: Event) -> tuple[int, int]:
+    start, end = event.start_mark, event.end_mark
+    return (start.index if start else 0), (end.index if end else 0)

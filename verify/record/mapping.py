@@ -36,11 +36,14 @@ class _Copy:
             return {str(key): self.plain(held, depth + 1) for key, held in value.items()}
         if isinstance(value, list | tuple):
             return [self.plain(held, depth + 1) for held in value]
+        listed = getattr(value, "tolist", None)  # arrays and numbers of numerical libraries
+        if listed is not None and not isinstance(value, int | float):
+            return self.plain(listed(), depth + 1)
         return _number(value)
 
 
 def plain_record(mapping: Mapping[str, object]) -> dict[str, object]:
-    """A copy of dicts, lists, texts and numbers; raises UnfitRecordError where it is too deep, too large or no mapping.
+    """A copy of dicts, lists, texts and numbers; raises UnfitRecordError where it is too deep or too large.
 
     Arrays of numbers become lists; a value that is not a number (NaN) counts as not given.
     """
@@ -54,10 +57,6 @@ def plain_record(mapping: Mapping[str, object]) -> dict[str, object]:
 
 def _number(value: object) -> object:
     """Numbers of any library as int or float; other objects stay, and the schema check tells of them."""
-    listed = getattr(value, "tolist", None)  # arrays and scalars of numerical libraries
-    if listed is not None and not isinstance(value, int | float):
-        value = listed()
-        return _Copy().plain(value, 1) if isinstance(value, list) else _number(value)
     if isinstance(value, Integral):
         return int(value)
     if isinstance(value, Real):

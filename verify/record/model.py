@@ -33,8 +33,8 @@ class SpectrumText:
     """One spectrum as reported: ``report`` (free text) or ``signals`` (structured), never both.
 
     ``signals`` are the raw mappings of the record: keys shift | low/high, multiplicity, couplings, nuclei,
-    note. The ``default_`` fields are the registry's: they hold where neither the record's keys nor the text say
-    otherwise.
+    note. The ``default_`` fields are the registry's: they hold where neither the record's keys nor the text
+    say otherwise.
     """
 
     nucleus: str

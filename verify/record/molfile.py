@@ -27,7 +27,7 @@ class MolfileFolder:
     root: str
 
     def read(self, path: str) -> str:
-        """The text of the MOL file at ``path``; raises UnfitFileError with a fault of code ``structure-...``."""
+        """The text of the MOL file at ``path``; raises UnfitFileError, its code "structure-..."."""
         if os.path.isabs(path) or PureWindowsPath(path).drive or PureWindowsPath(path).root:
             raise UnfitFileError(_outside(path, "is absolute"))
         target = os.path.join(self.folder, path)

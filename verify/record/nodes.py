@@ -6,10 +6,10 @@ from __future__ import annotations
 class Node:
     """One value of the document, as offsets ``[start, end)`` in code points of the file's text.
 
-    ``style`` is "" (plain), "'", '"', "|" or ">" for scalars, "map" or "seq" for collections. ``value`` is the
-    loaded text of a scalar. ``keys`` holds the offsets of each key of a mapping; ``children`` the values of a
-    mapping by key, or those of a sequence by position. ``weight`` counts nodes after aliases are expanded.
-    An alias shares the node of its anchor.
+    ``style`` is "" (plain), "'", '"', "|" or ">" for scalars, "map" or "seq" for collections. ``value`` is
+    the loaded text of a scalar. ``keys`` holds the offsets of each key of a mapping; ``children`` the values
+    of a mapping by key, or of a sequence by position. ``weight`` counts nodes after aliases are expanded. An
+    alias shares the node of its anchor.
     """
 
     __slots__ = ("children", "end", "keys", "start", "style", "value", "weight")

@@ -1,4 +1,4 @@
-"""Where a value of a record stands in its file, to the character; the map of a string is made when asked for."""
+"""Where a value of a record stands in its file, to the character; a string's map is made when asked for."""
 
 from __future__ import annotations
 
@@ -16,8 +16,8 @@ _LINE_END = re.compile(r"\r\n|\r|\n")
 class SourceMap:
     """Places of the values of one document.
 
-    A span under the empty pointer counts in the text of the whole file: it is how a fault of a file that could
-    not be loaded is placed. Lines end at LF, CRLF or CR; a byte order mark is no column.
+    A span under the empty pointer counts in the text of the whole file: it is how a fault of a file that
+    could not be loaded is placed. Lines end at LF, CRLF or CR; a byte order mark is no column.
     """
 
     def __init__(self, text: str, file: str, root: Node | None) -> None:
@@ -29,7 +29,7 @@ class SourceMap:
         self._maps: dict[tuple[int, int], CharacterMap | None] = {}
 
     def place(self, locus: Locus) -> Place:
-        """The characters that ``locus`` speaks of; the nearest parent there is where its pointer leads nowhere."""
+        """The characters that ``locus`` speaks of; its nearest parent where the pointer leads nowhere."""
         if locus.on_key:
             return self.key_place(locus.pointer)
         if locus.pointer == "" and locus.span is not None:
@@ -70,7 +70,9 @@ class SourceMap:
         return node, True
 
     def _extent(self, node: Node, span: Span | None) -> tuple[int, int]:
-        if not node.is_scalar or not node.value:
+        if not node.is_scalar:
+            return skip_properties(self.text, node.start), len(self.text[: node.end].rstrip())
+        if not node.value:
             return skip_properties(self.text, node.start) if node.start < node.end else node.start, node.end
         characters = self._characters(node)
         if characters is None:

@@ -11,7 +11,7 @@ from verify.errors import ConfigurationError
 from verify.findings.location import Locus
 from verify.findings.problem import Problem
 from verify.record.schema import shipped_schema
-from verify.record.settings import Defaults, ReadingSettings
+from verify.record.settings import NO_SETTINGS, Defaults, ReadingSettings
 from verify.record.source import Source, read_file
 from verify.record.wording import shown
 
@@ -21,17 +21,17 @@ DEVIATIONS_FILE = "deviations.yaml"
 
 @dataclass(frozen=True, slots=True)
 class RegistrySettings:
-    """``policy`` is "" where the registry names none; ``policy`` and ``rule_packs`` are as typed or whole paths.
+    """``policy`` is the name or path of a policy, "" where the registry names none; ``rule_packs`` are paths.
 
-    ``deviations`` is the path of the accepted deviations, "" where there is no such file. ``required_spectra`` is None
-    where the registry leaves that to the policy.
+    ``deviations`` is the path of the accepted deviations, "" where there is no such file.
+    ``required_spectra`` is None where the registry leaves that to the policy.
     """
 
     folder: str
     name: str = ""
     description: str = ""
     policy: str = ""
-    reading: ReadingSettings = ReadingSettings()
+    reading: ReadingSettings = NO_SETTINGS
     required_spectra: tuple[str, ...] | None = None
     rule_packs: tuple[str, ...] = ()
     deviations: str = ""

@@ -1,7 +1,7 @@
 """Plain YAML scalars read by the core schema of YAML 1.2.2, section 10.3, and nothing beyond it.
 
-YAML 1.1 would turn ``on`` and ``yes`` into booleans, ``12:30`` into 750 and ``1_000`` into 1000; a compound id or
-a batch typed that way must stay what was typed. ``.inf``, ``.nan`` and numbers beyond a double stay text: no
+YAML 1.1 would turn ``on`` and ``yes`` into booleans, ``12:30`` into 750 and ``1_000`` into 1000; an id or a
+batch typed that way must stay what was typed. ``.inf``, ``.nan`` and numbers beyond a double stay text: no
 quantity of a record can be any of them.
 """
 
@@ -26,13 +26,15 @@ _WORDS: dict[str, bool | None] = {
     "False": False,
     "FALSE": False,
 }
+_TAG = "tag:yaml.org,2002:"
+_TYPES_OF_TAG: dict[str, tuple[type, ...]] = {
+    _TAG + "int": (int,),
+    _TAG + "float": (int, float),
+    _TAG + "bool": (bool,),
+    _TAG + "null": (type(None),),
+}
 _MAY_BE_NUMBER = frozenset("+-.0123456789")
 _LONGEST_NUMBER = 300  # longer digit strings are no measured value, and int() is quadratic in their length
-
-
-def is_null(text: str) -> bool:
-    """Whether a plain scalar stands for "no value" (nothing, ``~`` or ``null``)."""
-    return text in _WORDS and _WORDS[text] is None
 
 
 def resolve_plain(text: str) -> str | int | float | bool | None:
@@ -51,3 +53,21 @@ def resolve_plain(text: str) -> str | int | float | bool | None:
     if _HEXADECIMAL.match(text):
         return int(text[2:], 16)
     return text
+
+
+def resolve_tagged(tag: str, text: str) -> str | int | float | bool | None:
+    """The value of a scalar with an explicit tag of the core schema; raises ValueError, its text says why."""
+    if tag in (_TAG + "str", "!"):
+        return text
+    types = _TYPES_OF_TAG.get(tag)
+    if types is None:
+        raise ValueError(f"the tag {tag!r} is not allowed")
+    value = resolve_plain(text)
+    if type(value) not in types:
+        raise ValueError(f"the value does not fit its tag {tag!r}")
+    return value
+
+
+def is_collection_tag(tag: str | None, style: str) -> bool:
+    """Whether a list ("seq") or group ("map") may carry this tag."""
+    return tag is None or tag == "!" or tag == _TAG + style

@@ -62,12 +62,11 @@ class Schema:
     def _wrong_value(self, error: ValidationError, path: tuple[object, ...]) -> Problem:
         expected = _expected(error)
         code = f"{self.prefix}-{_CODES.get(str(error.validator), 'wrong-value')}"
+        instance: Any = error.instance
         if error.validator == "maxItems":
-            message = (
-                f"{label_of(path)} has {len(error.instance)} items; at most {error.validator_value} are read"
-            )
+            message = f"{label_of(path)} has {len(instance)} items; at most {error.validator_value} are read"
         else:
-            message = f"{label_of(path)} is {shown(error.instance)}; expected {expected}"
+            message = f"{label_of(path)} is {shown(instance)}; expected {expected}"
         return Problem(code, message, Locus(pointer_of(path)), expected=expected)
 
     def _missing_key(self, error: ValidationError, path: tuple[object, ...], key: str) -> Problem:
@@ -81,8 +80,10 @@ class Schema:
 
     def _choice(self, error: ValidationError, path: tuple[object, ...]) -> Problem:
         """Exactly one of several keys is wanted; none or too many are there."""
-        choices = [key for part in error.validator_value for key in part.get("required", ())]
-        given = [key for key in choices if key in error.instance]
+        parts: Any = error.validator_value
+        instance: Any = error.instance
+        choices = [key for part in parts for key in part.get("required", ())]
+        given = [key for key in choices if key in instance]
         wanted = " or ".join(filter(None, (", ".join(choices[:-1]), choices[-1])))
         count = "none of them is there" if not given else f"{' and '.join(given)} are both there"
         message = f"{label_of(path)} needs one of {wanted}; {count}"
@@ -94,7 +95,8 @@ class Schema:
         assert isinstance(error.schema, Mapping)
         known = tuple(error.schema.get("properties", {}))
         free = tuple(error.schema.get("patternProperties", {}))
-        for key in error.instance:
+        instance: Any = error.instance
+        for key in instance:
             if key not in known and not any(key.startswith(pattern.lstrip("^")) for pattern in free):
                 yield self._unknown_key(path, str(key), known, f"one of {', '.join(known)}")
 
@@ -142,7 +144,8 @@ def _expected(error: ValidationError) -> str:
 
 def _missing(error: ValidationError) -> list[str]:
     """The key one ``required`` error speaks of (the validator reports each missing key on its own)."""
-    return [key for key in error.validator_value if error.message.startswith(f"{key!r} is a required")]
+    keys: Any = error.validator_value
+    return [key for key in keys if error.message.startswith(f"{key!r} is a required")]
 
 
 def _inlined(part: Any, definitions: Mapping[str, Any]) -> Any:

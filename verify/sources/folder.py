@@ -1,4 +1,4 @@
-"""A registry as a folder: ``registry.yaml`` and ``compounds/<id>/record.yaml``, with MOL files beside the records."""
+"""A registry as a folder: ``registry.yaml`` and ``compounds/<id>/record.yaml``, with MOL files beside it."""
 
 from __future__ import annotations
 
@@ -25,7 +25,7 @@ class FolderSource:
     """The records of a registry folder, one task for each folder in ``compounds/``, sorted by its name."""
 
     def __init__(self, path: str | os.PathLike[str]) -> None:
-        """Raises UsageError where ``path`` is no registry, ConfigurationError where its settings are wrong."""
+        """Raises UsageError where ``path`` is no registry, ConfigurationError where its settings fail."""
         self.path = os.fspath(path)
         _require_registry(self.path)
         self.registry: RegistrySettings = load_registry(self.path)

@@ -13,9 +13,9 @@ from verify.record.settings import NO_SETTINGS, ReadingSettings
 class Task:
     """One record to be read; small and picklable, so that it crosses to a worker instead of the record.
 
-    ``key`` names the record within its source, before it is read (a folder's name); ``file`` is the file as reports
-    show it; ``path`` is the file to open; nothing outside ``root`` is opened for it. ``wrong`` says why
-    there is nothing to open: "" (there is), "missing" or "misplaced".
+    ``key`` names the record within its source, before it is read (a folder's name); ``file`` is the file as
+    reports show it; ``path`` is the file to open; nothing outside ``root`` is opened for it. ``wrong`` says
+    why the file is not to be opened: "" (it is) or "misplaced".
     """
 
     source: str
