@@ -12,6 +12,7 @@ from numpy.typing import NDArray
 
 from verify.assignment.labels import label_cost
 from verify.assignment.pieces import group_weight
+from verify.environments.model import Environment
 from verify.expectations.model import CouplingBlock, Expectation, Window
 from verify.expectations.splitting import PatternPrice, price_pattern
 from verify.peaklist.model import Signal
@@ -26,6 +27,9 @@ EXCHANGEABLE_SHIFT_CAP = 7.0
 PARTNER_INSIDE = 0.3
 MERGED_EXCHANGEABLE = 0.3
 NO_PATTERN = 0.3
+UNJUDGED = 0.5
+# A pair this far apart (nats) never enters an explanation, unless the signal is far from everything.
+FAR, FAR_PATTERN, LOST_SIGNAL = 9.0, 1.5, 4.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -56,7 +60,7 @@ def outside(window: Window, low: float, high: float) -> float:
 def shift_price(window: Window, low: float, high: float, exchangeable: bool) -> float:
     """Quadratic to ``TAIL_FROM`` scales, then linear: real errors of a shift model have heavy tails."""
     if not window.judged:
-        return 0.5
+        return UNJUDGED
     z = distance(window, low, high) / window.scale
     price = 0.5 * z * z if z <= TAIL_FROM else 0.5 * TAIL_FROM**2 + TAIL_SLOPE * (z - TAIL_FROM)
     if outside(window, low, high) > 0.0:
@@ -65,12 +69,21 @@ def shift_price(window: Window, low: float, high: float, exchangeable: bool) -> 
 
 
 def _shift_matrix(expectations: tuple[Expectation, ...], signals: tuple[Signal, ...]) -> Matrix:
-    prices = np.zeros((len(expectations), len(signals)))
-    for row, expectation in enumerate(expectations):
-        exchangeable = bool(expectation.environment.exchangeable)
-        for column, signal in enumerate(signals):
-            prices[row, column] = shift_price(expectation.window, signal.low, signal.high, exchangeable)
-    return prices
+    """``shift_price`` of every pair at once, shape (expectations, signals)."""
+    low = np.array([s.low for s in signals])[None, :]
+    high = np.array([s.high for s in signals])[None, :]
+    windows = [e.window for e in expectations]
+    centre = np.array([w.centre for w in windows])[:, None]
+    scale = np.array([w.scale for w in windows])[:, None]
+    end_low = np.array([w.low for w in windows])[:, None]
+    end_high = np.array([w.high for w in windows])[:, None]
+    z = np.maximum(np.maximum(low - centre, centre - high), 0.0) / scale
+    prices = np.where(z <= TAIL_FROM, 0.5 * z * z, 0.5 * TAIL_FROM**2 + TAIL_SLOPE * (z - TAIL_FROM))
+    prices = prices + OUTSIDE * (np.maximum(low - end_high, end_low - high) > 0.0)
+    cap = np.array([EXCHANGEABLE_SHIFT_CAP if e.environment.exchangeable else SHIFT_CAP for e in expectations])
+    prices = np.minimum(prices, cap[:, None])
+    judged = np.array([w.judged for w in windows])[:, None]
+    return np.asarray(np.where(judged, prices, UNJUDGED), dtype=np.float64)
 
 
 def _fits_inside(block: CouplingBlock, count: float, signal: Signal, windows: dict[int, Window]) -> bool:
@@ -131,21 +144,30 @@ def price_all(
     windows = {e.environment.index: e.window for e in expectations}
     counts = {e.environment.index: e.environment.count for e in expectations}
     patterns: list[tuple[PatternPrice | None, ...]] = []
+    wanted = (shift <= FAR) | (shift.min(axis=0, initial=SHIFT_CAP) > LOST_SIGNAL)[None, :]
     for row, expectation in enumerate(expectations):
         environment = expectation.environment
         found: list[PatternPrice | None] = []
         for column, signal in enumerate(signals):
-            pattern = splitting_price(expectation, signal, windows, counts)
+            pattern = splitting_price(expectation, signal, windows, counts) if wanted[row, column] else None
             found.append(pattern)
-            price = NO_PATTERN if pattern is None else pattern.cost
-            if environment.exchangeable and signal.nuclei is not None and signal.nuclei > environment.count + 0.5:
-                price = min(price, MERGED_EXCHANGEABLE)
-            splitting[row, column] = price
+            splitting[row, column] = _letters_price(environment, signal, pattern, bool(wanted[row, column]))
             label[row, column] = label_cost(
                 signal.annotation, expectation.site, bool(environment.exchangeable),
                 hydrogens.get(environment.index, 0),
             )
         patterns.append(tuple(found))
-        weight = group_weight(environment.count)
-        shift[row] *= weight
+        shift[row] *= group_weight(environment.count)
     return Prices(shift, splitting, label, tuple(patterns))
+
+
+def _letters_price(
+    environment: Environment, signal: Signal, pattern: PatternPrice | None, near: bool
+) -> float:
+    """Nats of the letters and J of a signal as one environment."""
+    if not near and signal.multiplicity is not None:
+        return FAR_PATTERN
+    price = NO_PATTERN if pattern is None else pattern.cost
+    if environment.exchangeable and signal.nuclei is not None and signal.nuclei > environment.count + 0.5:
+        return min(price, MERGED_EXCHANGEABLE)
+    return price

@@ -54,7 +54,10 @@ def shift_classes(table: str) -> tuple[ShiftClass, ...]:
 
 
 def classes_of_atoms(mol: Chem.Mol, table: str) -> dict[int, list[ShiftClass]]:
-    """For every atom the classes whose first pattern atom it can be, in the order of the table."""
+    """For every atom the classes whose first pattern atom it can be, in the order of the table.
+
+    ``mol`` may go without explicit hydrogen, which halves the work.
+    """
     present = {mol.GetAtomWithIdx(n).GetAtomicNum() for n in range(mol.GetNumAtoms())}
     found: dict[int, list[ShiftClass]] = {}
     for shift_class in shift_classes(table):

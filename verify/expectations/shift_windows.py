@@ -6,6 +6,8 @@ from collections.abc import Sequence
 from dataclasses import replace
 from math import sqrt
 
+from rdkit import Chem
+
 from verify.environments.model import Environment, EnvironmentSet
 from verify.expectations.model import Increment, Window
 from verify.expectations.shift_classes import ShiftClass, classes_of_atoms
@@ -39,10 +41,11 @@ def shift_windows(structure: Structure, environments: EnvironmentSet, solvent: s
     nuclei = {e.nucleus for e in environments.all}
     mol = structure.mol
     found = survey(mol) if nuclei & {"1H", "13C"} else None
-    classes = classes_of_atoms(mol, "shift_classes") if found else {}
+    bare = Chem.RemoveHs(mol)  # heavy atoms keep their indices: hydrogen stands behind them
+    classes = classes_of_atoms(bare, "shift_classes") if found else {}
     exchanging = any(e.exchangeable for e in environments.all)
-    acids = classes_of_atoms(mol, "exchangeables") if exchanging else {}
-    hetero = {n: classes_of_atoms(mol, f"shift_hetero:{n}") for n in ("19F", "31P") if n in nuclei}
+    acids = classes_of_atoms(bare, "exchangeables") if exchanging else {}
+    hetero = {n: classes_of_atoms(bare, f"shift_hetero:{n}") for n in ("19F", "31P") if n in nuclei}
     metal = bool(set(structure.formula) & SPECIAL_ELEMENTS)
     codes: dict[int, list[str]] = {}
     known: dict[tuple[int, str], Window] = {}
@@ -95,13 +98,14 @@ def _joined(fitted: Window, low: float, high: float, chosen: ShiftClass, nucleus
     scale = max(sqrt(1.6 / (weight + other)), NARROWEST[nucleus])
     source = f"rules/tables/shift_classes ({chosen.source})"
     step = Increment(f"handbook class: {chosen.label}", centre - fitted.centre, source)
-    return replace(fitted, centre=centre, scale=min(scale, fitted.scale), trail=(*fitted.trail, step))
+    return Window(fitted.low, fitted.high, centre, min(scale, fitted.scale), (*fitted.trail, step))
 
 
 def _believed(window: Window, nucleus: str, low: float, high: float) -> Window:
     """Hard ends: far from the centre and outside every class the atom belongs to, but never beyond what was met."""
     reach = max(REACH_WIDTHS[nucleus] * window.scale, LEAST_REACH[nucleus])
-    return replace(window, low=min(low, window.centre - reach), high=max(high, window.centre + reach))
+    ends = min(low, window.centre - reach), max(high, window.centre + reach)
+    return Window(*ends, window.centre, window.scale, window.trail)
 
 
 def _widened(window: Window, environment: Environment, solvent: str | None, metal: bool) -> Window:

@@ -99,14 +99,9 @@ def _step(text: str, position: int, end: int, nucleus: str, found: Details) -> i
         if not values and text[stop : stop + 1] != "J":
             found.problems.append(_no_coupling(text, position, stop))
         return stop
-    if nucleus == "13C":
-        stop = _carbon(text, position, end, found)
-        if stop is not None:
-            return stop
-    else:
-        stop = _nuclei(text, position, end, found)
-        if stop is not None:
-            return stop
+    counted = (_carbon if nucleus == "13C" else _nuclei)(text, position, end, found)
+    if counted is not None:
+        return counted
     bare = read_bare_couplings(text, position, end)
     if bare is not None:
         found.couplings.extend(bare[0])
