@@ -9,10 +9,12 @@ from __future__ import annotations
 import re
 from dataclasses import dataclass, field
 
-_PROPERTIES = re.compile(r"(?:[ \t\r\n]+|#[^\r\n]*|[&!][^ \t\r\n]*)*")
+_PROPERTIES = re.compile(
+    "(?:[ \t\r\n\x85\u2028\u2029]+|#[^\r\n\x85\u2028\u2029]*|[&!][^ \t\r\n\x85\u2028\u2029]*)*"
+)
 _BREAK = re.compile("\r\n|[\r\n\x85\u2028\u2029]")
 _LINE = re.compile("([^\r\n\x85\u2028\u2029]*)(\r\n|[\r\n\x85\u2028\u2029]|\\Z)")
-_HEADER = re.compile(r"[|>]([-+1-9]*)[^\r\n]*(?:\r\n|[\r\n]|\Z)")
+_HEADER = re.compile("[|>]([-+1-9]*)[^\r\n\x85\u2028\u2029]*(?:\r\n|[\r\n\x85\u2028\u2029]|\\Z)")
 _ESCAPE = re.compile(r"\\(?:x[0-9a-fA-F]{2}|u[0-9a-fA-F]{4}|U[0-9a-fA-F]{8}|[^\r\n])")
 _SHORT = {
     "0": "\0", "a": "\a", "b": "\b", "t": "\t", "\t": "\t", "n": "\n", "v": "\v", "f": "\f", "r": "\r",

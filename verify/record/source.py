@@ -13,6 +13,11 @@ from verify.record.decoding import MOST_BYTES, Fault, decode, too_large
 from verify.record.loading import RefusedError, load
 from verify.record.places import SourceMap
 
+# No link is followed, and opening a pipe does not wait for a writer; both flags exist only on POSIX systems
+_FLAGS = (
+    os.O_RDONLY | getattr(os, "O_NOFOLLOW", 0) | getattr(os, "O_NONBLOCK", 0) | getattr(os, "O_BINARY", 0)
+)
+
 
 @dataclass(frozen=True, slots=True)
 class Source:
@@ -64,23 +69,27 @@ class UnfitFileError(Exception):
 
 def read_bytes(path: str, most: int) -> bytes:
     """The content of a regular file of at most ``most`` bytes; raises UnfitFileError."""
-    flags = (
-        os.O_RDONLY | getattr(os, "O_NOFOLLOW", 0) | getattr(os, "O_NONBLOCK", 0) | getattr(os, "O_BINARY", 0)
-    )
     try:
-        descriptor = os.open(path, flags)
+        descriptor = os.open(path, _FLAGS)
     except OSError as error:
         raise UnfitFileError(_unopened(error)) from error
-    with open(descriptor, "rb") as stream:
-        status = os.fstat(descriptor)
-        if not stat.S_ISREG(status.st_mode):
-            raise UnfitFileError(
-                Fault("record-not-a-file", "this is no ordinary file", expected="a text file")
-            )
-        if status.st_size > most:
-            raise UnfitFileError(too_large(status.st_size))
+    try:
+        return _content(descriptor, most)
+    except OSError as error:
+        raise UnfitFileError(_unopened(error)) from error
+    finally:
+        os.close(descriptor)
+
+
+def _content(descriptor: int, most: int) -> bytes:
+    status = os.fstat(descriptor)
+    if not stat.S_ISREG(status.st_mode):
+        raise UnfitFileError(Fault("record-not-a-file", "this is no ordinary file", expected="a text file"))
+    if status.st_size > most:
+        raise UnfitFileError(too_large(status.st_size))
+    with open(descriptor, "rb", closefd=False) as stream:
         data = stream.read(most + 1)
-    if len(data) > most:
+    if len(data) > most:  # it grew while it was read
         raise UnfitFileError(too_large(len(data)))
     return data
 
