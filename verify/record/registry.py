@@ -44,7 +44,9 @@ def load_registry(folder: str) -> RegistrySettings:
     _raise_if_wrong(source, source.problems)
     data = source.data
     if not isinstance(data, dict):
-        problem = Problem("registry-wrong-type", f"the file holds {shown(data)}; expected settings", Locus())
+        problem = Problem(
+            "registry-wrong-type", f"the file cannot be {shown(data)}", Locus(), expected="settings"
+        )
         _raise_if_wrong(source, (problem,))
         raise AssertionError  # not reached: the line above raises
     values = {key: value for key, value in data.items() if value is not None}
@@ -116,5 +118,6 @@ def _raise_if_wrong(source: Source, problems: tuple[Problem, ...]) -> None:
     lines = []
     for problem in problems:
         place = source.places.place(problem.locus)
-        lines.append(f"{place.file}:{place.line}:{place.column}: {problem.message}")
+        expected = f"; expected {problem.expected}" if problem.expected else ""
+        lines.append(f"{place.file}:{place.line}:{place.column}: {problem.message}{expected}")
     raise ConfigurationError("\n".join(lines))

@@ -19,6 +19,7 @@ from jsonschema.exceptions import ValidationError
 from verify.findings.location import Locus
 from verify.findings.problem import Problem
 from verify.record.nodes import escape, pointer_of
+from verify.record.scalars import resolve_plain
 from verify.record.wording import label_of, shown
 
 _CODES = {
@@ -37,7 +38,7 @@ class Schema:
         """``document`` is the schema as parsed JSON; local references in it are resolved once, here."""
         self.document = _inlined(document, document.get("$defs", {}))
         self.prefix = prefix
-        self.keys = {key: tuple(sorted(parents)) for key, parents in _parents(self.document).items()}
+        self.keys = _parents(self.document)
         self._validator = Draft202012Validator(self.document)
 
     def check(self, data: object) -> tuple[Problem, ...]:
@@ -55,7 +56,8 @@ class Schema:
         elif "propertyNames" in error.absolute_schema_path:
             yield self._unknown_key(path, str(error.instance), (), _expected(error))
         elif error.validator == "oneOf":
-            yield self._choice(error, path)
+            if isinstance(error.instance, Mapping):  # else its wrong type is told already
+                yield self._choice(error, path)
         else:
             yield self._wrong_value(error, path)
 
@@ -64,19 +66,18 @@ class Schema:
         code = f"{self.prefix}-{_CODES.get(str(error.validator), 'wrong-value')}"
         instance: Any = error.instance
         if error.validator == "maxItems":
-            message = f"{label_of(path)} has {len(instance)} items; at most {error.validator_value} are read"
+            message = f"{label_of(path)} has {len(instance)} items, more than are read"
+            expected = f"at most {error.validator_value}"
         else:
-            message = f"{label_of(path)} is {shown(instance)}; expected {expected}"
+            advice = "; write it without quotes" if _quoted_number(error) else ""
+            message = f"{self._label(path)} cannot be {shown(instance)}{advice}"
         return Problem(code, message, Locus(pointer_of(path)), expected=expected)
 
     def _missing_key(self, error: ValidationError, path: tuple[object, ...], key: str) -> Problem:
         part = error.schema.get("properties", {}).get(key, {}) if isinstance(error.schema, Mapping) else {}
-        expected = str(part.get("expected", key))
-        where = f" in {label_of(path)}" if path else ""
-        message = f'the key "{key}" is missing{where}; expected {expected}'
-        return Problem(
-            f"{self.prefix}-key-missing", message, Locus(pointer_of((*path, key))), expected=expected
-        )
+        message = f'the key "{key}" is missing in {self._label(path)}'
+        locus = Locus(pointer_of((*path, key)))
+        return Problem(f"{self.prefix}-key-missing", message, locus, expected=str(part.get("expected", key)))
 
     def _choice(self, error: ValidationError, path: tuple[object, ...]) -> Problem:
         """Exactly one of several keys is wanted; none or too many are there."""
@@ -84,12 +85,14 @@ class Schema:
         instance: Any = error.instance
         choices = [key for part in parts for key in part.get("required", ())]
         given = [key for key in choices if key in instance]
-        wanted = " or ".join(filter(None, (", ".join(choices[:-1]), choices[-1])))
-        count = "none of them is there" if not given else f"{' and '.join(given)} are both there"
-        message = f"{label_of(path)} needs one of {wanted}; {count}"
-        pointer = pointer_of((*path, given[1])) if len(given) > 1 else pointer_of(path)
-        locus = Locus(pointer, on_key=len(given) > 1)
-        return Problem(f"{self.prefix}-key-choice", message, locus, expected=f"exactly one of {wanted}")
+        wanted = f"one of {', '.join(choices)}"
+        if given:
+            message = f"{label_of(path)} has {' and '.join(given)}, but only one of them may stand"
+            locus = Locus(pointer_of((*path, given[1])), on_key=True)
+        else:
+            message = f"{label_of(path)} has none of {', '.join(choices)}"
+            locus = Locus(pointer_of(path))
+        return Problem(f"{self.prefix}-key-choice", message, locus, expected=wanted)
 
     def _unknown_keys(self, error: ValidationError, path: tuple[object, ...]) -> Iterator[Problem]:
         assert isinstance(error.schema, Mapping)
@@ -103,17 +106,19 @@ class Schema:
     def _unknown_key(
         self, path: tuple[object, ...], key: str, known: tuple[str, ...], expected: str
     ) -> Problem:
-        where = f" in {label_of(path)}" if path else ""
         nearest = nearest_key(key, known)
-        advice = f'; did you mean "{nearest}"?' if nearest else self._elsewhere(key, expected)
-        message = f'unknown key "{key}"{where}{advice}'
+        advice = f'; did you mean "{nearest}"?' if nearest else self._elsewhere(key)
+        message = f'unknown key "{key}" in {self._label(path)}{advice}'
         locus = Locus(f"{pointer_of(path)}/{escape(key)}", on_key=True)
         evidence = {"key": key, "nearest": nearest}
         return Problem(f"{self.prefix}-unknown-key", message, locus, expected=expected, evidence=evidence)
 
-    def _elsewhere(self, key: str, expected: str) -> str:
+    def _label(self, path: tuple[object, ...]) -> str:
+        return label_of(path) or f"the {self.prefix}"
+
+    def _elsewhere(self, key: str) -> str:
         parents = [parent for parent in self.keys.get(key, ()) if parent]
-        return f'; it belongs under "{parents[0]}"' if parents else f"; expected {expected}"
+        return f'; it belongs under "{parents[0]}"' if parents else ""
 
 
 def nearest_key(key: str, known: Iterable[str]) -> str:
@@ -132,6 +137,13 @@ def shipped_schema(name: str, prefix: str) -> Schema:
     """The schema file ``name`` of this package, compiled once per process."""
     text = files("verify.record").joinpath(name).read_text(encoding="utf-8")
     return Schema(json.loads(text), prefix)
+
+
+def _quoted_number(error: ValidationError) -> bool:
+    """Whether a text stands where a number is wanted and would be one without its quotes."""
+    if error.validator != "type" or not isinstance(error.instance, str):
+        return False
+    return type(resolve_plain(error.instance.strip())) in (int, float)
 
 
 def _expected(error: ValidationError) -> str:
@@ -160,14 +172,14 @@ def _inlined(part: Any, definitions: Mapping[str, Any]) -> Any:
     return {key: _inlined(value, definitions) for key, value in part.items() if key != "$defs"}
 
 
-def _parents(part: Mapping[str, Any], name: str = "") -> dict[str, set[str]]:
+def _parents(part: Mapping[str, Any], name: str = "") -> dict[str, list[str]]:
     """Every key that the schema knows, with the keys under which it may stand ("" = at the top)."""
-    found: dict[str, set[str]] = {}
+    found: dict[str, list[str]] = {}
     for key, value in part.get("properties", {}).items():
-        found.setdefault(key, set()).add(name)
+        found.setdefault(key, []).append(name)
         for deeper, parents in _parents(value, key).items():
-            found.setdefault(deeper, set()).update(parents)
+            found.setdefault(deeper, []).extend(parents)
     if isinstance(part.get("items"), Mapping):
         for deeper, parents in _parents(part["items"], name).items():
-            found.setdefault(deeper, set()).update(parents)
+            found.setdefault(deeper, []).extend(parents)
     return found

@@ -90,13 +90,15 @@ def _read(
 ) -> RecordReading:
     """Check, then build from what is right; only a missing structure leaves no record."""
     if not isinstance(data, dict):
-        message = f"the file holds {shown(data)}; expected keys such as compound, structure and spectra"
-        problem = Problem("record-not-a-record", message, Locus(), "record", "a record")
+        message = f"the file holds {shown(data)}, which is no record"
+        problem = Problem(
+            "record-not-a-record", message, Locus(), "record", "keys such as compound, structure and spectra"
+        )
         return RecordReading(identify(None, folder_name, "").compound, file, None, (problem,), places)
     schema = record_schema()
     _drop_empty(data, schema)
     faults = tuple(blocked_part(problem) for problem in schema.check(data))
-    wrong = frozenset(p.locus.pointer for p in faults if not p.locus.on_key)
+    wrong = frozenset(problem.locus.pointer for problem in faults)
     parts = Parts(data, wrong, typed)
     identity = identify(parts.text(data, "compound", ""), folder_name, settings.id_pattern)
     structure, more = _structure(parts, faults, molfiles)

@@ -9,7 +9,7 @@ _LONGEST = 60
 
 
 def label_of(path: Sequence[object]) -> str:
-    """A path of keys and positions as a reader would say it: ``field_mhz of spectrum 2``."""
+    """A path of keys and positions as a reader says it: ``field_mhz of spectrum 2``; "" for the whole."""
     words: list[str] = []
     for step, parent in zip(path, ("", *path), strict=False):
         if isinstance(step, int):
@@ -17,7 +17,7 @@ def label_of(path: Sequence[object]) -> str:
             words[-1:] = [f"{singular} {step + 1}"]
         else:
             words.append(str(step))
-    return " of ".join(reversed(words)) or "the record"
+    return " of ".join(reversed(words))
 
 
 def shown(value: object) -> str:
