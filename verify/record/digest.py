@@ -25,7 +25,9 @@ def digest_of(record: Record) -> str:
 
 def _plain(value: object) -> object:
     if is_dataclass(value):
-        return {f.name: _plain(getattr(value, f.name)) for f in fields(value) if f.name not in _NOT_MEANING}
+        named = ((f.name, getattr(value, f.name)) for f in fields(value) if f.name not in _NOT_MEANING)
+        # what is not given is left out, so that a field the model gains later changes no digest
+        return {name: _plain(held) for name, held in named if held is not None and held != () and held != {}}
     if isinstance(value, Mapping):
         return {str(key): _plain(held) for key, held in value.items()}
     if isinstance(value, list | tuple):
