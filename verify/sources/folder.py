@@ -34,10 +34,12 @@ class FolderSource:
         """A task for each compound; folders without a record and records outside a folder come too."""
         compounds = os.path.join(self.path, COMPOUNDS)
         with os.scandir(compounds) as entries:
-            names = sorted(entry.name for entry in entries if not entry.name.startswith("."))
-        for name in names:
+            found = sorted(
+                (e.name, e.is_dir() or e.is_symlink()) for e in entries if not e.name.startswith(".")
+            )
+        for name, is_folder in found:
             place = os.path.join(compounds, name)
-            if os.path.isdir(place) or os.path.islink(place):
+            if is_folder:
                 yield self._task(name, os.path.join(place, RECORD_FILE), "")
             elif name.lower().endswith(_YAML_ENDINGS):
                 yield self._task(os.path.splitext(name)[0], place, "misplaced")
