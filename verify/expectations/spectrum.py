@@ -18,7 +18,7 @@ Array = NDArray[np.float64]
 # (of whole groups) for which a step is worth its time.
 STEPS = ((None, 1100.0), (30.0, 2500.0), (10.0, 2500.0))
 MOST_LINES = 4096
-SMALLEST_J_HZ = 0.8
+SMALLEST_J_HZ = 1.1
 
 
 @dataclass(frozen=True, slots=True)
