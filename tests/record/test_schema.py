@@ -126,6 +126,26 @@ def test_problems_of_a_kept_spectrum_carry_its_number() -> None:
     assert (kept.locus.pointer, kept.locus.spectrum) == ("/spectra/1/temperature_k", 0)
 
 
+def test_problem_in_a_signal_carries_its_number() -> None:
+    (problem,) = _read(GOOD.replace("[2.1]", "[xx]")).problems
+    assert (problem.locus.spectrum, problem.locus.signal) == (1, 1)
+
+
+def test_endless_faults_are_cut_and_the_record_is_not_read() -> None:
+    text = GOOD + "".join(f"key{number}: 1\n" for number in range(5000)) + f"? {'k' * 100_000}\n: 1\n"
+    reading = _read(text)
+    assert [problem.code for problem in reading.problems] == ["record-unknown-key"] * 100 + [
+        "record-many-faults"
+    ]
+    assert reading.record is None
+
+
+def test_long_key_is_shortened_in_the_message() -> None:
+    (problem,) = _read(f"{GOOD}? {'k' * 100_000}\n: 1\n").problems
+    assert problem.code == "record-unknown-key"
+    assert len(problem.message) < 200
+
+
 @pytest.mark.parametrize("key", ["batch", "name", "notes", "components", "spectra", "mass", "elemental"])
 def test_key_without_a_value_counts_as_not_given(key: str) -> None:
     reading = _read(f'compound: ARO-0001\nstructure: {{smiles: "C"}}\n{key}:\n')

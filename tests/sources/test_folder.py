@@ -114,6 +114,14 @@ def test_record_outside_a_folder_is_told_and_not_lost(registry: Path) -> None:
     assert "compounds/ARO-0005/record.yaml" in readings["ARO-0005"].problems[0].expected
 
 
+@pytest.mark.skipif(os.name != "posix", reason="file names are bytes only there")
+def test_folder_whose_name_is_no_text_is_read_and_can_be_shown(registry: Path) -> None:
+    os.mkdir(os.fsencode(registry / "compounds") + b"/ARO-\xff\n1")
+    readings = _readings(registry)
+    assert _codes(readings["ARO-\ufffd\ufffd1"]) == ["record-missing"]
+    assert readings["ARO-\ufffd\ufffd1"].file.encode("utf-8")
+
+
 def test_ids_are_held_against_folder_and_pattern(registry: Path) -> None:
     _compound(registry, "ARO-0006", RECORD.format(id="ARO-0001"))
     _compound(registry, "misc")

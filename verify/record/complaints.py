@@ -53,6 +53,8 @@ def explain(error: MarkedYAMLError, text: str) -> Fault:
         return _at(error.context_mark or mark, "the quote that opens here is never closed", "a closing quote")
     if "cannot start any token" in problem or "tab character" in problem:
         return _unfit_character(text, start)
+    if start >= len(text.rstrip()):  # the end of the file is nowhere to look; what is open began above
+        mark = error.context_mark or mark
     for words, (message, expected) in _PLAIN_WORDS.items():
         if problem.startswith(words):
             return _at(mark, message, expected)

@@ -24,9 +24,10 @@ from verify.record.complaints import explain
 from verify.record.decoding import Fault
 from verify.record.nodes import Node
 from verify.record.scalars import is_collection_tag, resolve_plain, resolve_tagged
+from verify.record.wording import shortened
 
 DEEPEST = 20
-HEAVIEST = 100_000  # values of a document after its aliases are expanded; long texts weigh more
+HEAVIEST = 50_000  # values of a document after its aliases are expanded; long texts weigh more
 _CHARACTERS_PER_WEIGHT = 64
 _NO_KEY = "a list or a group of keys stands where a key is expected"
 _Parser = getattr(yaml, "CBaseLoader", yaml.BaseLoader)  # libyaml where PyYAML was built with it
@@ -207,7 +208,7 @@ class _Loader:
         if not frame.skip:
             frame.node.keys[key] = (start, end)
             return
-        message = f'the key "{key}" stands twice here; only the first is read'
+        message = f'the key "{shortened(key)}" stands twice here; only the first is read'
         self.loaded.faults.append(Fault("record-duplicate-key", message, start, end, "each key once"))
 
     def _grow(self, event: Event, weight: int) -> None:

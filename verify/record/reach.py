@@ -13,7 +13,7 @@ _CHOICE = "record-key-choice"
 def blocked_part(problem: Problem) -> Problem:
     """The problem with what it blocks, and with a code of its own where a part of the record has one."""
     steps = problem.locus.pointer.split("/")[1:]
-    if problem.code == "record-unknown-key":
+    if problem.code == "record-unknown-key" or problem.blocks:
         return problem
     if not steps or steps[0] == "structure":
         return replace(problem, blocks="record", code=_structure_code(problem, steps))

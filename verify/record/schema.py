@@ -11,6 +11,7 @@ from collections.abc import Iterable, Iterator, Mapping
 from difflib import get_close_matches
 from functools import cache
 from importlib.resources import files
+from itertools import islice
 from typing import Any
 
 from jsonschema import Draft202012Validator
@@ -20,8 +21,10 @@ from verify.findings.location import Locus
 from verify.findings.problem import Problem
 from verify.record.nodes import escape, pointer_of
 from verify.record.scalars import resolve_plain
-from verify.record.wording import label_of, shown
+from verify.record.wording import label_of, shortened, shown
 
+MOST_TOLD = 100
+_LONGEST_KEY = 60  # the likeness of longer keys is dear to compute and nobody mistypes a known key as one
 _CODES = {
     "type": "wrong-type",
     "required": "key-missing",
@@ -42,9 +45,14 @@ class Schema:
         self._validator = Draft202012Validator(self.document)
 
     def check(self, data: object) -> tuple[Problem, ...]:
-        """Every breach, in the order of its place in the document; none blocks anything yet."""
-        found = [problem for error in self._validator.iter_errors(data) for problem in self._problems(error)]
-        return tuple(found)
+        """The breaches, none of which blocks anything yet; beyond ``MOST_TOLD`` one blocks the record."""
+        problems = (each for error in self._validator.iter_errors(data) for each in self._problems(error))
+        told = tuple(islice(problems, MOST_TOLD + 1))
+        if len(told) <= MOST_TOLD:
+            return told
+        message = f"the file has more than {MOST_TOLD} faults; the others are not told, and it is not read"
+        fault = Problem(f"{self.prefix}-many-faults", message, Locus(), "record", f"a {self.prefix}")
+        return (*told[:MOST_TOLD], fault)
 
     def _problems(self, error: ValidationError) -> Iterator[Problem]:
         path = tuple(error.absolute_path)
@@ -108,9 +116,9 @@ class Schema:
     ) -> Problem:
         nearest = nearest_key(key, known)
         advice = f'; did you mean "{nearest}"?' if nearest else self._elsewhere(key)
-        message = f'unknown key "{key}" in {self._label(path)}{advice}'
+        message = f'unknown key "{shortened(key)}" in {self._label(path)}{advice}'
         locus = Locus(f"{pointer_of(path)}/{escape(key)}", on_key=True)
-        evidence = {"key": key, "nearest": nearest}
+        evidence = {"key": shortened(key), "nearest": nearest}
         return Problem(f"{self.prefix}-unknown-key", message, locus, expected=expected, evidence=evidence)
 
     def _label(self, path: tuple[object, ...]) -> str:
@@ -123,6 +131,8 @@ class Schema:
 
 def nearest_key(key: str, known: Iterable[str]) -> str:
     """The known key that was most likely meant, "" if none is near."""
+    if len(key) > _LONGEST_KEY:
+        return ""
     plain = {_plain(each): each for each in known}
     found = get_close_matches(_plain(key), plain, n=1, cutoff=0.6)
     return plain[found[0]] if found else ""

@@ -150,12 +150,16 @@ def _molfile(path: str, molfiles: MolfileFolder | None) -> tuple[StructureText |
 
 
 def _numbered(problems: tuple[Problem, ...], record: Record) -> tuple[Problem, ...]:
-    """Problems inside a spectrum that was kept carry its number."""
+    """Problems inside a spectrum that was kept carry its number, and that of their signal."""
+    if not problems:
+        return ()
     numbers = {spectrum.pointer: number for number, spectrum in enumerate(record.spectra)}
     numbered = []
     for problem in problems:
-        head = "/".join(problem.locus.pointer.split("/")[:3])
-        if head in numbers:
-            problem = replace(problem, locus=replace(problem.locus, spectrum=numbers[head]))
+        steps = problem.locus.pointer.split("/")
+        number = numbers.get("/".join(steps[:3]))
+        if number is not None:
+            signal = int(steps[4]) if len(steps) > 4 and steps[3] == "signals" else None
+            problem = replace(problem, locus=replace(problem.locus, spectrum=number, signal=signal))
         numbered.append(problem)
     return tuple(numbered)

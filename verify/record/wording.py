@@ -20,6 +20,12 @@ def label_of(path: Sequence[object]) -> str:
     return " of ".join(reversed(words))
 
 
+def shortened(text: str) -> str:
+    """A text on one line, cut where it is too long for a sentence."""
+    cut = text if len(text) <= _LONGEST else text[: _LONGEST - 1] + "…"
+    return " ".join(cut.split())
+
+
 def shown(value: object) -> str:
     """A value as it may stand in a sentence: short, on one line, with its kind where that is the point."""
     if value is None:
@@ -27,8 +33,7 @@ def shown(value: object) -> str:
     if isinstance(value, bool):
         return "true" if value else "false"
     if isinstance(value, str):
-        text = value if len(value) <= _LONGEST else value[: _LONGEST - 1] + "…"
-        return "an empty text" if not text.strip() else f'the text "{" ".join(text.split())}"'
+        return f'the text "{shortened(value)}"' if value.strip() else "an empty text"
     if isinstance(value, Mapping):
         return "a group of keys"
     if isinstance(value, list | tuple):

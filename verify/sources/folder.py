@@ -45,8 +45,15 @@ class FolderSource:
                 yield self._task(os.path.splitext(name)[0], place, "misplaced")
 
     def _task(self, key: str, path: str, wrong: str) -> Task:
-        shown = Path(path).as_posix()
-        return Task("folder", key, shown, path, self.path, self.registry.reading, wrong)
+        return Task(
+            "folder",
+            _printable(key),
+            _printable(Path(path).as_posix()),
+            path,
+            self.path,
+            self.registry.reading,
+            wrong,
+        )
 
 
 def read_task(task: Task) -> RecordReading:
@@ -70,6 +77,12 @@ def _unfit(task: Task, folder: str) -> Fault | None:
         message = "this folder is a link that leads out of the registry; it is not read"
         return Fault("record-path-outside", message, expected="a folder in the registry")
     return None
+
+
+def _printable(name: str) -> str:
+    """A file name that can be shown: bytes that are no text, and control characters, become U+FFFD."""
+    text = name.encode("utf-8", "surrogateescape").decode("utf-8", "replace")
+    return "".join(c if c.isprintable() or c == " " else "\ufffd" for c in text)
 
 
 def _inside(path: str, root: str) -> bool:
