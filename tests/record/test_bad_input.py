@@ -58,6 +58,7 @@ UNUSABLE = {
     "code by a short tag": (b"a: !os.system x\n", "record-tag", 1, 4),
     "tag that does not fit": (b"a: !!int x\n", "record-tag", 1, 4),
     "too many values": (b"[" + b"1," * 200_000 + b"]", "record-too-large", 1, 100_000),
+    "too many keys twice": (b"a: 1\n" * 102, "record-many-faults", 102, 1),
     "2 MB": (b"a: " + b"x" * 2_000_000, "record-too-large", 1, 1),
     "a list": (b"- a\n- b\n", "record-not-a-record", 1, 1),
     "a text": (b"hello\n", "record-not-a-record", 1, 1),

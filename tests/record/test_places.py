@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from pathlib import Path
 
 import pytest
 import yaml
@@ -156,6 +157,30 @@ def test_worked_places(text: str, part: str, expected: tuple[int, int, int]) -> 
     at = source.data["a"].index(part)
     place = source.places.place(Locus("/a", Span(at, at + len(part))))
     assert (place.line, place.column, place.length) == expected
+
+
+EXAMPLE = sorted((Path(__file__).parents[2] / "registry_example").rglob("record.yaml"))
+
+
+@pytest.mark.parametrize("path", EXAMPLE, ids=lambda path: path.parent.name)
+def test_every_text_of_the_example_stands_where_the_map_says(path: Path) -> None:
+    text = path.read_text(encoding="utf-8")
+    source = read_source(text.encode("utf-8"), str(path))
+
+    def walk(value: object, pointer: str) -> None:
+        if isinstance(value, dict):
+            for key, held in value.items():
+                assert _slice(text, source.places.place(Locus(f"{pointer}/{key}", on_key=True))) == key
+                walk(held, f"{pointer}/{key}")
+        elif isinstance(value, list):
+            for number, held in enumerate(value):
+                walk(held, f"{pointer}/{number}")
+        elif isinstance(value, str):
+            _check(source, text, pointer, value)
+        else:
+            assert float(_slice(text, source.places.place(Locus(pointer)))) == value
+
+    walk(source.data, "")
 
 
 DOCUMENT = """\

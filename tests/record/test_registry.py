@@ -32,8 +32,12 @@ def _registry(folder: Path, text: str) -> str:
 
 
 def test_whole_settings(tmp_path: Path) -> None:
-    (tmp_path / "accepted.yaml").write_text("deviations: []\n", encoding="utf-8")
-    settings = load_registry(_registry(tmp_path, WHOLE))
+    folder = tmp_path / "registry"
+    (folder / "rules").mkdir(parents=True)
+    (tmp_path / "common").mkdir()
+    for path in (folder / "accepted.yaml", tmp_path / "common" / "pack.yaml"):
+        path.write_text("x: []\n", encoding="utf-8")
+    settings = load_registry(_registry(folder, WHOLE))
     assert (settings.name, settings.description, settings.policy) == (
         "Aroma",
         "Invented, all of it.",
@@ -44,8 +48,8 @@ def test_whole_settings(tmp_path: Path) -> None:
     assert settings.reading.defaults.field_mhz("13C") == 101.0
     assert settings.reading.defaults.field_mhz("19F") is None
     assert settings.required_spectra == ("1H", "13C")
-    assert settings.rule_packs == (str(tmp_path / "rules"), str(tmp_path.parent / "common" / "pack.yaml"))
-    assert settings.deviations == str(tmp_path / "accepted.yaml")
+    assert settings.rule_packs == (str(folder / "rules"), str(tmp_path / "common" / "pack.yaml"))
+    assert settings.deviations == str(folder / "accepted.yaml")
     assert pickle.loads(pickle.dumps(settings)) == settings
 
 
@@ -80,6 +84,8 @@ def test_policy_is_a_name_or_a_file_beside_the_settings(tmp_path: Path) -> None:
         ("defaults: {field_mhz: {H: 400}}\n", ":1:24: ", "1H, 13C"),
         ("required_spectra: [1H, 2H]\n", ":1:24: ", "1H, 13C"),
         ("deviations: none.yaml\n", ":1:13: ", '"none.yaml"'),
+        ("rules: [none]\n", ":1:9: ", '"none"'),
+        ("policy: none.yaml\n", ":1:9: ", '"none.yaml"'),
         ("name: a\nname: b\n", ":2:1: ", "twice"),
         ("name: 'a\n", ":1:7: ", "quote"),
     ],

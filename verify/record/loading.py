@@ -28,6 +28,7 @@ from verify.record.wording import shortened
 
 DEEPEST = 20
 HEAVIEST = 50_000  # values of a document after its aliases are expanded; long texts weigh more
+MOST_FAULTS = 100
 _CHARACTERS_PER_WEIGHT = 64
 _NO_KEY = "a list or a group of keys stands where a key is expected"
 _Parser = getattr(yaml, "CBaseLoader", yaml.BaseLoader)  # libyaml where PyYAML was built with it
@@ -208,6 +209,9 @@ class _Loader:
         if not frame.skip:
             frame.node.keys[key] = (start, end)
             return
+        if len(self.loaded.faults) >= MOST_FAULTS:
+            message = f"more than {MOST_FAULTS} keys stand twice"
+            raise RefusedError(Fault("record-many-faults", message, start, end, "each key once"))
         message = f'the key "{shortened(key)}" stands twice here; only the first is read'
         self.loaded.faults.append(Fault("record-duplicate-key", message, start, end, "each key once"))
 

@@ -17,6 +17,7 @@ from verify.record.wording import shown
 
 REGISTRY_FILE = "registry.yaml"
 DEVIATIONS_FILE = "deviations.yaml"
+_POLICY_ENDINGS = (".yaml", ".yml")
 
 
 @dataclass(frozen=True, slots=True)
@@ -58,14 +59,15 @@ def load_registry(folder: str) -> RegistrySettings:
 def _settings(folder: str, values: Mapping[str, object], source: Source) -> RegistrySettings:
     required = values.get("required_spectra")
     packs = values.get("rules")
+    named = enumerate(packs) if isinstance(packs, list) else ()
     return RegistrySettings(
         folder=folder,
         name=source.places.typed("/name") or "",
         description=source.places.typed("/description") or "",
-        policy=_policy(folder, str(values.get("policy", ""))),
+        policy=_policy(folder, str(values.get("policy", "")), source),
         reading=ReadingSettings(str(values.get("id_pattern", "")), _defaults(values.get("defaults"))),
         required_spectra=tuple(required) if isinstance(required, list) else None,
-        rule_packs=tuple(_whole(folder, str(path)) for path in packs) if isinstance(packs, list) else (),
+        rule_packs=tuple(_existing(folder, str(path), f"/rules/{n}", source) for n, path in named),
         deviations=_deviations(folder, values.get("deviations"), source),
     )
 
@@ -81,24 +83,28 @@ def _defaults(given: object) -> Defaults:
     )
 
 
-def _policy(folder: str, policy: str) -> str:
-    """A policy that is a file beside the registry comes as a path; anything else is a name."""
-    path = _whole(folder, policy)
-    return path if policy and os.path.isfile(path) else policy
+def _policy(folder: str, policy: str, source: Source) -> str:
+    """A policy file beside the registry comes as a path; a bare word is the name of a shipped policy."""
+    return _existing(folder, policy, "/policy", source) if policy.endswith(_POLICY_ENDINGS) else policy
 
 
-def _whole(folder: str, path: str) -> str:
-    return os.path.normpath(os.path.join(folder, path))
+def _existing(folder: str, path: str, pointer: str, source: Source) -> str:
+    """The path, seen from the registry's folder; raises ConfigurationError where nothing is there."""
+    whole = os.path.normpath(os.path.join(folder, path))
+    if not os.path.exists(whole):
+        message = f'there is no file or folder "{path}"'
+        problem = Problem(
+            "registry-file-missing", message, Locus(pointer), expected="a path from registry.yaml"
+        )
+        _raise_if_wrong(source, (problem,))
+    return whole
 
 
 def _deviations(folder: str, given: object, source: Source) -> str:
-    path = _whole(folder, str(given) if given is not None else DEVIATIONS_FILE)
-    if os.path.isfile(path):
-        return path
     if given is not None:
-        message = f'there is no file "{given}" of accepted deviations'
-        _raise_if_wrong(source, (Problem("registry-file-missing", message, Locus("/deviations")),))
-    return ""
+        return _existing(folder, str(given), "/deviations", source)
+    path = os.path.normpath(os.path.join(folder, DEVIATIONS_FILE))
+    return path if os.path.isfile(path) else ""
 
 
 def _pattern_problem(values: Mapping[str, object]) -> tuple[Problem, ...]:
