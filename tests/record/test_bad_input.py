@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 
 from verify.record.loading import DEEPEST
 from verify.record.source import read_file, read_source
-from verify.record.stage import read_record
+from verify.record.stage import Surroundings, read_record
 
 BOMB = b"a: &a [x,x,x,x,x,x,x,x,x,x]\n" + b"".join(
     b"%c: &%c [%s]\n" % (name, name, b",".join([b"*%c" % (name - 1)] * 10))
@@ -68,7 +68,7 @@ UNUSABLE = {
 
 @pytest.mark.parametrize(("data", "code", "line", "column"), UNUSABLE.values(), ids=UNUSABLE)
 def test_unusable_file_is_one_located_problem(data: bytes, code: str, line: int, column: int) -> None:
-    reading = read_record(data, "r.yaml", folder_name="ARO-0001")
+    reading = read_record(data, "r.yaml", Surroundings(folder_name="ARO-0001"))
     assert [problem.code for problem in reading.problems] == [code]
     problem = reading.problems[0]
     place = reading.places.place(problem.locus)

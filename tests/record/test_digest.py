@@ -6,7 +6,7 @@ import pytest
 
 from verify.record.digest import digest_of
 from verify.record.settings import Defaults, ReadingSettings
-from verify.record.stage import read_record
+from verify.record.stage import Surroundings, read_record
 
 PLAIN = """\
 compound: A
@@ -32,6 +32,7 @@ structure:
   smiles: "CCO"
 compound: "A"
 """
+NO_DEFAULTS = Defaults()
 CHANGES = [
     ("CCO", "CCN"),
     ("compound: A", "compound: B"),
@@ -43,8 +44,10 @@ CHANGES = [
 ]
 
 
-def _digest(text: str, settings: ReadingSettings = ReadingSettings()) -> str:  # noqa: B008  (frozen)
-    record = read_record(text.encode("utf-8"), "r.yaml", settings).record
+def _digest(text: str, defaults: Defaults = NO_DEFAULTS) -> str:
+    record = read_record(
+        text.encode("utf-8"), "r.yaml", Surroundings(ReadingSettings(defaults=defaults))
+    ).record
     assert record is not None
     return digest_of(record)
 
@@ -61,7 +64,7 @@ def test_every_change_of_meaning_matters(old: str, new: str) -> None:
 
 
 def test_defaults_of_the_registry_matter() -> None:
-    assert _digest(PLAIN, ReadingSettings(defaults=Defaults(solvent="CDCl3"))) != _digest(PLAIN)
+    assert _digest(PLAIN, Defaults(solvent="CDCl3")) != _digest(PLAIN)
 
 
 def test_digest_is_the_same_in_every_process_and_version_of_python() -> None:

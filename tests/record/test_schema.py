@@ -15,7 +15,7 @@ from jsonschema import Draft202012Validator
 
 from verify.record.model import RecordReading
 from verify.record.schema import nearest_key, shipped_schema
-from verify.record.stage import read_record, record_schema
+from verify.record.stage import Surroundings, read_record, record_schema
 
 FAULTS = yaml.safe_load(Path(__file__).with_name("record_faults.yaml").read_text(encoding="utf-8"))
 GOOD = """\
@@ -40,7 +40,7 @@ x-origin: shelf 3
 
 
 def _read(text: str) -> RecordReading:
-    return read_record(text.encode("utf-8"), "r.yaml", folder_name="ARO-0001")
+    return read_record(text.encode("utf-8"), "r.yaml", Surroundings(folder_name="ARO-0001"))
 
 
 def _told(reading: RecordReading) -> list[tuple[str, int, int, int]]:

@@ -16,7 +16,7 @@ from verify.findings.location import Locus, Place, Span
 from verify.record.model import RecordReading
 from verify.record.molfile import MOST_MOLFILE_BYTES, MolfileFolder
 from verify.record.settings import Defaults, ReadingSettings
-from verify.record.stage import read_record, reading_of, record_from_mapping
+from verify.record.stage import Surroundings, read_record, reading_of, record_from_mapping
 
 MOLFILE = "\n  demo\n\n  1  0  0  0  0  0  0  0  0  0999 V2000\n    0.0 0.0 0.0 C   0  0\nM  END\n"
 
@@ -35,7 +35,7 @@ def registry(tmp_path: Path) -> Path:
 def _read(registry: Path, path: str) -> RecordReading:
     folder = MolfileFolder(str(registry / "compounds" / "ARO-0001"), str(registry))
     text = f"structure:\n  molfile: '{path}'\n"
-    return read_record(text.encode("utf-8"), "r.yaml", folder_name="ARO-0001", molfiles=folder)
+    return read_record(text.encode("utf-8"), "r.yaml", Surroundings(folder_name="ARO-0001", molfiles=folder))
 
 
 @pytest.mark.parametrize("path", ["structure.mol", "./structure.mol", "../shared.mol"])
@@ -113,7 +113,7 @@ def test_molfile_without_a_folder_is_told() -> None:
 def test_ids(given: str | None, folder: str, compound: str, codes: list[str]) -> None:
     text = (f"compound: {given}\n" if given else "") + 'structure: {smiles: "C"}\n'
     settings = ReadingSettings(id_pattern="ARO-[0-9]{4}")
-    reading = read_record(text.encode("utf-8"), "r.yaml", settings, folder)
+    reading = read_record(text.encode("utf-8"), "r.yaml", Surroundings(settings, folder))
     assert reading.compound == compound
     assert [problem.code for problem in reading.problems] == codes
     assert all(problem.blocks == "" for problem in reading.problems)
@@ -128,7 +128,7 @@ def test_defaults_stand_beside_what_the_record_says() -> None:
     defaults = Defaults(solvent="DMSO-d6", temperature_k=300.0, fields=(("1H", 500.0),))
     spectra = b"[{nucleus: 1H, solvent: CDCl3, report: x}, {nucleus: 13C, report: x}]"
     text = b"structure: {smiles: C}\nspectra: " + spectra
-    record = read_record(text, "r.yaml", ReadingSettings(defaults=defaults)).record
+    record = read_record(text, "r.yaml", Surroundings(ReadingSettings(defaults=defaults))).record
     assert record is not None
     proton, carbon = record.spectra
     assert (proton.solvent, proton.default_solvent, proton.default_field_mhz) == ("CDCl3", "DMSO-d6", 500.0)

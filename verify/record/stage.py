@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import replace
+from dataclasses import dataclass, replace
 
 from verify.findings.location import Locus
 from verify.findings.problem import Problem
@@ -27,46 +27,44 @@ def record_schema() -> Schema:
     return shipped_schema("record.schema.json", "record")
 
 
-def read_record(
-    data: bytes,
-    file: str,
-    settings: ReadingSettings = NO_SETTINGS,
-    folder_name: str = "",
-    molfiles: MolfileFolder | None = None,
-) -> RecordReading:
-    """Read the YAML or JSON text of one record. ``molfiles`` reads the MOL file it may name."""
-    return read_loaded(read_source(data, file), settings, folder_name, molfiles)
+@dataclass(frozen=True, slots=True)
+class Surroundings:
+    """What stands around a record: its registry's settings, its folder's name, and what reads its MOL file.
+
+    ``molfiles`` is None for a record that stands in no folder.
+    """
+
+    settings: ReadingSettings = NO_SETTINGS
+    folder_name: str = ""
+    molfiles: MolfileFolder | None = None
 
 
-def read_loaded(
-    source: Source,
-    settings: ReadingSettings = NO_SETTINGS,
-    folder_name: str = "",
-    molfiles: MolfileFolder | None = None,
-) -> RecordReading:
+ALONE = Surroundings()
+
+
+def read_record(data: bytes, file: str, around: Surroundings = ALONE) -> RecordReading:
+    """Read the YAML or JSON text of one record; ``file`` is its name in reports."""
+    return read_loaded(read_source(data, file), around)
+
+
+def read_loaded(source: Source, around: Surroundings = ALONE) -> RecordReading:
     """Make the record of a file that was loaded before; a file that gave no data gives no record."""
     places = source.places
     if not source.usable:
-        identity = identify(None, folder_name, settings.id_pattern)
-        return RecordReading(identity.compound, places.file, None, source.problems, places)
-    reading = _read(source.data, places.file, places, places.typed, settings, folder_name, molfiles)
+        return _no_record(places.file, places, around, source.problems)
+    reading = _read(source.data, places.file, places, places.typed, around)
     return replace(reading, problems=source.problems + reading.problems) if source.problems else reading
 
 
 def record_from_mapping(
-    mapping: Mapping[str, object],
-    settings: ReadingSettings = NO_SETTINGS,
-    file: str = "",
-    molfiles: MolfileFolder | None = None,
+    mapping: Mapping[str, object], around: Surroundings = ALONE, file: str = ""
 ) -> RecordReading:
     """Read a record handed in by a program; places count inside the texts of the mapping."""
     try:
         data = plain_record(mapping)
     except UnfitRecordError as unfit:
-        return RecordReading(
-            identify(None, "", "").compound, file, None, (unfit.problem,), ValuePlaces(mapping)
-        )
-    return _read(data, file, ValuePlaces(data), lambda _: None, settings, "", molfiles)
+        return _no_record(file, ValuePlaces(mapping), around, (unfit.problem,))
+    return _read(data, file, ValuePlaces(data), lambda _: None, around)
 
 
 def reading_of(record: Record) -> RecordReading:
@@ -79,29 +77,27 @@ def reading_of(record: Record) -> RecordReading:
     )
 
 
-def _read(
-    data: object,
-    file: str,
-    places: PlaceFinder,
-    typed: Typed,
-    settings: ReadingSettings,
-    folder_name: str,
-    molfiles: MolfileFolder | None,
+def _no_record(
+    file: str, places: PlaceFinder, around: Surroundings, problems: tuple[Problem, ...]
 ) -> RecordReading:
+    """A reading without a record; it goes by the name of the folder."""
+    return RecordReading(identify(None, around.folder_name, "").compound, file, None, problems, places)
+
+
+def _read(data: object, file: str, places: PlaceFinder, typed: Typed, around: Surroundings) -> RecordReading:
     """Check, then build from what is right; only a missing structure leaves no record."""
     if not isinstance(data, dict):
         message = f"the file holds {shown(data)}, which is no record"
-        problem = Problem(
-            "record-not-a-record", message, Locus(), "record", "keys such as compound, structure and spectra"
-        )
-        return RecordReading(identify(None, folder_name, "").compound, file, None, (problem,), places)
+        expected = "keys such as compound, structure and spectra"
+        problem = Problem("record-not-a-record", message, Locus(), "record", expected)
+        return _no_record(file, places, around, (problem,))
+    settings = around.settings
     schema = record_schema()
     _drop_empty(data, schema)
     faults = tuple(blocked_part(problem) for problem in schema.check(data))
-    wrong = frozenset(problem.locus.pointer for problem in faults)
-    parts = Parts(data, wrong, typed)
-    identity = identify(parts.text(data, "compound", ""), folder_name, settings.id_pattern)
-    structure, more = _structure(parts, faults, molfiles)
+    parts = Parts(data, frozenset(problem.locus.pointer for problem in faults), typed)
+    identity = identify(parts.text(data, "compound", ""), around.folder_name, settings.id_pattern)
+    structure, more = _structure(parts, faults, around.molfiles)
     problems = faults + identity.problems + more
     if structure is None:
         return RecordReading(identity.compound, file, None, problems, places)

@@ -12,7 +12,7 @@ from verify.record.model import RecordReading
 from verify.record.molfile import MolfileFolder
 from verify.record.registry import REGISTRY_FILE, RegistrySettings, load_registry
 from verify.record.source import read_file, refused
-from verify.record.stage import read_loaded
+from verify.record.stage import Surroundings, read_loaded
 from verify.sources.model import Task
 
 COMPOUNDS = "compounds"
@@ -63,8 +63,7 @@ def read_task(task: Task) -> RecordReading:
     source = refused(fault, task.file) if fault else read_file(task.path, task.file)
     if not fault and source.problems and source.problems[0].code == "record-missing":
         source = refused(_missing(folder), task.file)
-    molfiles = MolfileFolder(folder, task.root)
-    return read_loaded(source, task.settings, task.key, molfiles)
+    return read_loaded(source, Surroundings(task.settings, task.key, MolfileFolder(folder, task.root)))
 
 
 def _unfit(task: Task, folder: str) -> Fault | None:
