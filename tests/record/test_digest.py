@@ -14,6 +14,7 @@ structure: {smiles: CCO}
 spectra:
   - {nucleus: 1H, field_mhz: 400, report: "3.7 (q, 2H), 1.2 (t, 3H)"}
 mass: [{ion: "[M+H]+", calculated: 47.0491}]
+elemental: {found: {C: 52, H: 13.1}}
 """
 OTHERWISE_TYPED = """\
 # the same
@@ -27,6 +28,10 @@ spectra:
     "field_mhz": 400.0
     nucleus: 1H
     solvent:
+elemental:
+  found:
+    H: 13.10
+    C: 52.0
 notes: words
 structure:
   smiles: "CCO"
@@ -39,6 +44,7 @@ CHANGES = [
     ("400", "500"),
     ("(q, 2H)", "(q,2H)"),
     ("47.0491", "47.0492"),
+    ("13.1", "13.2"),
     ("1H,", "13C,"),
     ("smiles: CCO", "inchi: InChI=1S/CCO"),
 ]
@@ -69,4 +75,4 @@ def test_defaults_of_the_registry_matter() -> None:
 
 def test_digest_is_the_same_in_every_process_and_version_of_python() -> None:
     """Caches outlive a process: a change of this value makes every cached result of every user void."""
-    assert _digest(PLAIN) == "17ccb6be3f20854eb9540e2223b74be293dd75fb9b4c149b15b7aa2b086ce2f6"
+    assert _digest(PLAIN) == "470374f100bd5bc7d05d2304f0cfb9785c08e1ab3c0cef3dae2e51365b041c00"

@@ -126,6 +126,13 @@ def test_problems_of_a_kept_spectrum_carry_its_number() -> None:
     assert (kept.locus.pointer, kept.locus.spectrum) == ("/spectra/1/temperature_k", 0)
 
 
+def test_more_spectra_than_are_read_are_told() -> None:
+    spectra = "spectra: [" + "{nucleus: 1H, report: x}, " * 51 + "]"
+    (problem,) = _read(f"structure: {{smiles: C}}\n{spectra}\n").problems
+    assert (problem.code, problem.blocks, problem.expected) == ("record-too-many", "spectrum", "at most 50")
+    assert "51 items" in problem.message
+
+
 def test_problem_in_a_signal_carries_its_number() -> None:
     (problem,) = _read(GOOD.replace("[2.1]", "[xx]")).problems
     assert (problem.locus.spectrum, problem.locus.signal) == (1, 1)
