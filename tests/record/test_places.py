@@ -10,6 +10,7 @@ import yaml
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+import verify.record.loading
 from verify.findings.location import Locus, Place, Span
 from verify.record.source import Source, read_source
 
@@ -181,6 +182,27 @@ def test_every_text_of_the_example_stands_where_the_map_says(path: Path) -> None
             assert float(_slice(text, source.places.place(Locus(pointer)))) == value
 
     walk(source.data, "")
+
+
+def test_parser_without_libyaml_gives_the_same_places(monkeypatch: pytest.MonkeyPatch) -> None:
+    """PyYAML comes without its C library on some systems; the plain one is slower and must agree."""
+
+    def everything() -> list[object]:
+        sources = [read_source(path.read_bytes(), "f.yaml") for path in EXAMPLE]
+        pointers = ["", "/structure", "/spectra/0", "/spectra/1/signals/2/shift", "/notes"]
+        loci = [Locus("/spectra/0/report", Span(2, 40)), *map(Locus, pointers)]
+        return [(each.data, [each.places.place(locus) for locus in loci]) for each in sources]
+
+    fast = everything()
+    monkeypatch.setattr(verify.record.loading, "_Parser", yaml.BaseLoader)
+    assert everything() == fast
+
+
+def test_half_a_character_is_refused_by_either_parser(monkeypatch: pytest.MonkeyPatch) -> None:
+    for _ in range(2):
+        (problem,) = read_source(b'a: "\\ud83d"\n', "f.yaml").problems
+        assert problem.code == "record-syntax"
+        monkeypatch.setattr(verify.record.loading, "_Parser", yaml.BaseLoader)
 
 
 DOCUMENT = """\

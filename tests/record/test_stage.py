@@ -175,6 +175,14 @@ def test_mapping_is_not_changed_and_may_hold_values_of_other_libraries() -> None
     assert spectrum["solvent"] is None
 
 
+def test_halves_of_characters_in_a_mapping_are_joined_or_replaced() -> None:
+    reading = record_from_mapping(
+        {"structure": {"smiles": "C"}, "name": "\ud83d\ude00", "notes": "a\ud83db é"}
+    )
+    assert reading.record is not None
+    assert (reading.record.name, reading.record.notes) == ("😀", "a\ufffdb é")
+
+
 def test_mapping_that_holds_itself_or_is_none_is_told() -> None:
     data: dict[str, Any] = {"structure": {"smiles": "C"}}
     data["spectra"] = [data]

@@ -6,6 +6,7 @@ but what the document holds after they are expanded is bounded.
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass, field
 
 import yaml
@@ -30,6 +31,7 @@ DEEPEST = 20
 HEAVIEST = 50_000  # values of a document after its aliases are expanded; long texts weigh more
 MOST_FAULTS = 100
 _CHARACTERS_PER_WEIGHT = 64
+_SURROGATE = re.compile("[\ud800-\udfff]")
 _NO_KEY = "a list or a group of keys stands where a key is expected"
 _Parser = getattr(yaml, "CBaseLoader", yaml.BaseLoader)  # libyaml where PyYAML was built with it
 
@@ -127,6 +129,10 @@ class _Loader:
     def _scalar(self, event: ScalarEvent) -> None:
         text, style = event.value, event.style or ""
         start, end = _offsets(event)
+        if style == '"' and not text.isascii() and _SURROGATE.search(text):  # libyaml refuses it itself
+            self._refuse(
+                event, "record-syntax", "half of a character (\\ud800 to \\udfff)", "the whole character"
+            )
         node = Node(start, end, style, text)
         self._grow(event, 1 + len(text) // _CHARACTERS_PER_WEIGHT)
         value: object = text if style else resolve_plain(text)

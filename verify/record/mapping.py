@@ -30,7 +30,9 @@ class _Copy:
         self.left -= 1
         if depth > DEEPEST or self.left < 0:
             _refuse(depth)
-        if isinstance(value, str) or value is None or isinstance(value, bool):
+        if isinstance(value, str):
+            return value if value.isascii() else _writable(value)
+        if value is None or isinstance(value, bool):
             return value
         if isinstance(value, Mapping):
             return {str(key): self.plain(held, depth + 1) for key, held in value.items()}
@@ -53,6 +55,15 @@ def plain_record(mapping: Mapping[str, object]) -> dict[str, object]:
     copied = _Copy().plain(mapping, 1)
     assert isinstance(copied, dict)
     return copied
+
+
+def _writable(text: str) -> str:
+    """The text with halves of characters joined, or replaced by U+FFFD: no report could hold them."""
+    try:
+        text.encode("utf-8")
+    except UnicodeEncodeError:
+        return text.encode("utf-16", "surrogatepass").decode("utf-16", "replace")
+    return text
 
 
 def _number(value: object) -> object:
