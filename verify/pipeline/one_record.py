@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 from verify.assignment.stage import assign
 from verify.environments.model import EnvironmentSet
 from verify.environments.stage import find_environments
@@ -13,6 +15,7 @@ from verify.findings.result import RecordResult, verdict_of
 from verify.peaklist.model import PeakList
 from verify.peaklist.stage import read_peak_list, read_signals
 from verify.pipeline.reach import solvent_and_field, unassessed_because
+from verify.pipeline.rival_test import rival_fits
 from verify.pipeline.summary import summarise, summary_of
 from verify.record.model import Record, RecordReading, SpectrumText
 from verify.rulebook.model import RecordCase, Rulebook, SpectrumCase
@@ -26,6 +29,8 @@ def examine_record(
 ) -> RecordResult:
     """Take one record all the way to its verdict; ``today`` is an ISO date that decides expiry of deviations."""
     case = build_case(reading)
+    if rulebook.policy.rivals:
+        case = replace(case, rivals=rival_fits(case, most=rulebook.policy.rivals))
     findings = judge(case, rulebook, deviations, today)
     because = unassessed_because(case)
     return RecordResult(

@@ -34,9 +34,11 @@ def proton_field(field_mhz: float | None, nucleus: str) -> float | None:
 
 
 def solvent_and_field(spectrum: SpectrumText, peaks: PeakList) -> tuple[str | None, float | None]:
-    """Canonical solvent and proton frequency (MHz): the record's own keys first, then what the text says."""
-    solvent = solvent_name(spectrum.solvent or peaks.solvent) or None
-    return solvent, proton_field(spectrum.field_mhz or peaks.field_mhz, spectrum.nucleus)
+    """Canonical solvent and proton frequency (MHz): the record's own keys, else what the text says, else the
+    defaults of the registry."""
+    solvent = solvent_name(spectrum.solvent or peaks.solvent or spectrum.default_solvent) or None
+    field = spectrum.field_mhz or peaks.field_mhz or spectrum.default_field_mhz
+    return solvent, proton_field(field, spectrum.nucleus)
 
 
 def unassessed_because(case: RecordCase) -> str:

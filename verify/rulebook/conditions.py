@@ -1,0 +1,62 @@
+"""Conditions of rules in the Common Expression Language (CEL): compiled once, asked with the few facts they name."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping
+from typing import Any
+
+import cel
+
+from verify.errors import ConfigurationError
+
+# CEL's own words, and nothing else: an expression cannot reach files, attributes or code.
+_NAME = re.compile(r"(?<![\w.\"'])([a-z]+)\.([a-z_0-9]+)(?!\s*\()")
+_TEXT = re.compile(r"\"(?:[^\"\\]|\\.)*\"|'(?:[^'\\]|\\.)*'")
+LONGEST = 600
+MOST_REMEMBERED = 20_000
+Facts = Mapping[str, Mapping[str, Any]]
+
+
+class Condition:
+    """``names``: the (group, fact) pairs the expression uses, in order of appearance."""
+
+    __slots__ = ("_program", "_remembered", "names", "source")
+
+    def __init__(self, source: str) -> None:
+        """Compile; raises ConfigurationError if it is no expression of the language or too long."""
+        if len(source) > LONGEST:
+            raise ConfigurationError(f"a condition may hold {LONGEST} characters, this one holds {len(source)}")
+        if re.search(r"\.(?:map|filter|exists|exists_one|all)\s*\(", _TEXT.sub("", source)):
+            raise ConfigurationError("a condition may not loop over lists (map, filter, exists, all)")
+        try:
+            self._program = cel.compile(source)
+        except ValueError as error:
+            raise ConfigurationError(f"the condition is no CEL expression: {error}") from error
+        self.source = source
+        bare = _TEXT.sub(lambda m: " " * len(m.group()), source)
+        self.names = tuple(dict.fromkeys(_NAME.findall(bare)))
+        self._remembered: dict[tuple[object, ...], bool] = {}
+
+    def __reduce__(self) -> tuple[type[Condition], tuple[str]]:
+        return Condition, (self.source,)
+
+    def holds(self, facts: Facts) -> bool:
+        """True where the expression is true of the facts. Raises KeyError for a fact that is not there, ValueError
+        or TypeError where the expression gives no true or false."""
+        values = tuple(facts[group][name] for group, name in self.names)
+        known = self._remembered.get(values)
+        if known is not None:
+            return known
+        given: dict[str, dict[str, Any]] = {}
+        for (group, name), value in zip(self.names, values, strict=True):
+            given.setdefault(group, {})[name] = value
+        try:
+            answer = self._program.execute(given)
+        except RuntimeError as error:
+            raise ValueError(str(error)) from error
+        if not isinstance(answer, bool):
+            raise TypeError(f"the condition gives {answer!r}, not true or false")
+        if len(self._remembered) < MOST_REMEMBERED:
+            self._remembered[values] = answer
+        return answer
