@@ -8,6 +8,7 @@ from enum import StrEnum
 from typing import Any
 
 from verify.findings.finding import Finding, Level
+from verify.findings.plain import finding_entry, plain
 
 
 class Verdict(StrEnum):
@@ -38,6 +39,18 @@ class RecordResult:
     def standing(self, level: Level) -> tuple[Finding, ...]:
         """Findings of this level that no deviation accepts."""
         return tuple(f for f in self.findings if f.level is level and f.stands)
+
+    def as_dict(self) -> dict[str, Any]:
+        """One ``records[]`` entry of the report schema; every key is always there."""
+        return {
+            "compound": self.compound,
+            "file": self.file,
+            "verdict": str(self.verdict),
+            "unassessed_because": self.unassessed_because,
+            "summary": plain(self.summary),
+            "findings": [finding_entry(finding) for finding in self.findings],
+            "assignment": plain(self.assignment),
+        }
 
 
 def verdict_of(findings: tuple[Finding, ...], unassessed: bool) -> Verdict:
