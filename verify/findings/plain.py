@@ -31,7 +31,7 @@ def finding_entry(finding: Finding) -> dict[str, Any]:
 
 def place_entry(place: Place | None) -> dict[str, Any] | None:
     """Where it stands; None for what has no place, such as a whole registry."""
-    return asdict(place) if place is not None else None
+    return asdict(place) | {"length": place.length} if place is not None else None
 
 
 def _locus_entry(locus: Locus) -> dict[str, Any]:
