@@ -38,7 +38,7 @@ def _loaded(policy: str, packs: tuple[str, ...], folder: str | None) -> Rulebook
     chosen = load_policy(policy, base)
     rules = {rule.id: rule for rule in _shipped_rules()}
     for pack in packs:
-        rules |= {rule.id: rule for rule in _pack(base / pack if base else Path(pack))}
+        rules |= {rule.id: rule for rule in read_pack(base / pack if base else Path(pack))}
     _check_policy(chosen, rules)
     _check_limits(chosen, rules.values())
     applied = [_with_level(rule, chosen) for rule in sorted(rules.values(), key=lambda r: r.id)]
@@ -62,7 +62,9 @@ def _rule_files(folder: Path | Traversable) -> Iterator[Path | Traversable]:
             yield entry
 
 
-def _pack(folder: Path) -> list[Rule]:
+def read_pack(folder: str | Path) -> list[Rule]:
+    """Rules of a folder and the folders in it; raises ConfigurationError."""
+    folder = Path(folder)
     if not folder.is_dir():
         raise ConfigurationError(f"{folder}: there is no such folder of rules")
     rules = [read_rule(path, str(path)) for path in sorted(folder.rglob("*.yaml"))]
