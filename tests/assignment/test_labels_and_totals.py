@@ -5,9 +5,9 @@ from __future__ import annotations
 import pytest
 
 from verify.assignment.labels import claims, label_cost
+from verify.assignment.model import Share, SignalReading
 from verify.assignment.offset import common_offset
 from verify.assignment.pieces import carrier_groups, left_out_price, whole_groups
-from verify.assignment.model import Share, SignalReading
 from verify.assignment.totals import common_factor, fewest_signals, hydrogen_totals
 from verify.environments.model import Environment
 from verify.expectations.model import Expectation, Window

@@ -9,9 +9,9 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from verify.assignment.pieces import Piece, kin_weights
 from verify.assignment.boxes import CROWDING, SLACK, Boxes
 from verify.assignment.branching import branch_and_bound
+from verify.assignment.pieces import Piece, kin_weights
 from verify.assignment.solver import integer, linear, place, whole
 
 

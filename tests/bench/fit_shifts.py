@@ -19,8 +19,8 @@ import numpy as np
 from rdkit import Chem, RDLogger
 
 from verify.expectations.fit_shifts import Design, Group, Vector, build_design, fit, match
-from verify.expectations.surroundings import Surroundings, survey, terms
 from verify.expectations.shift_estimate import depth_key
+from verify.expectations.surroundings import Surroundings, survey, terms
 
 ROOT = Path(__file__).resolve().parents[2]
 DATA = Path(os.environ.get("PEAKWITNESS_DATA", ROOT.parent / "shared" / "data"))

@@ -12,10 +12,10 @@ from dataclasses import dataclass, replace
 from published import Published
 from rdkit import Chem
 from rdkit.rdBase import BlockLogs
-from verify.peaklist.stage import read_text
 
 from verify.findings.location import Span
 from verify.peaklist.model import PeakList, Signal
+from verify.peaklist.stage import read_text
 
 Generator = Callable[[Published, random.Random, list[Published]], Published | None]
 

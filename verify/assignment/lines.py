@@ -95,7 +95,8 @@ def explain_lines(
             homeless.append(int(line))
     lost = _join(costs, home, len(expectations), set(homeless))
     total = float(table[chosen_line, chosen].sum())
-    return LineExplanation(costs, tuple(tuple(sorted(h)) for h in home), lost, tuple(sorted(homeless)), len(extra), total)
+    homes = tuple(tuple(sorted(h)) for h in home)
+    return LineExplanation(costs, homes, lost, tuple(sorted(homeless)), len(extra), total)
 
 
 def _join(costs: Matrix, home: list[list[int]], count: int, homeless: set[int]) -> tuple[int, ...]:

@@ -73,7 +73,8 @@ def window_words(expectation: Expectation) -> str:
     if not window.judged:
         return f"{expectation.words}: not estimated"
     reach = 2.2 * window.scale
-    return f"{expectation.words} {max(window.low, window.centre - reach):.2f} to {min(window.high, window.centre + reach):.2f} ppm"
+    low, high = max(window.low, window.centre - reach), min(window.high, window.centre + reach)
+    return f"{expectation.words} {low:.2f} to {high:.2f} ppm"
 
 
 def _letters_declared(signal: Signal) -> int:

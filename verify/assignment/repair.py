@@ -32,9 +32,11 @@ def _of_signal(reading: SignalReading, signal: Signal) -> list[Repair]:
     name = f"signal at {shift_text(signal)}"
     number = reading.signal
     if reading.excess > 0.05 and not reading.shares:
-        words = f"{name} ({_letters(signal)}, {count_text(signal.nuclei or reading.excess)}H) has no place in the structure"
+        hydrogens = count_text(signal.nuclei or reading.excess)
+        words = f"{name} ({_letters(signal)}, {hydrogens}H) has no place in the structure"
         if reading.solvent_line:
-            found.append(Repair("solvent-line", f"{name} fits if it is {reading.solvent_line}", SLACK * reading.excess, number))
+            fits = f"{name} fits if it is {reading.solvent_line}"
+            found.append(Repair("solvent-line", fits, SLACK * reading.excess, number))
         else:
             found.append(Repair("extra-signal", words, SLACK * reading.excess, number))
     elif reading.excess > 0.05 or reading.deficit > 0.05:

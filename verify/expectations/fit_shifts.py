@@ -44,7 +44,7 @@ class Design:
     def transposed_times(self, values: Vector) -> Vector:
         """Sum per term of the values of the rows that hold it, shape (terms,)."""
         spread = np.repeat(values, np.diff(self.starts))
-        return np.bincount(self.columns, weights=spread, minlength=len(self.names))
+        return np.bincount(self.columns, weights=spread, minlength=len(self.names)).astype(np.float64, copy=False)
 
 
 def build_design(rows: Sequence[Sequence[str]], prior: Sequence[float], least: int) -> Design:

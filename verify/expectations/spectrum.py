@@ -1,4 +1,4 @@
-"""The spectrum a structure should give: spin systems built from expectations, simulated exactly where that is possible."""
+"""The spectrum a structure should give: spin systems from expectations, simulated exactly where possible."""
 
 from __future__ import annotations
 

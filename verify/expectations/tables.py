@@ -20,7 +20,7 @@ def read_table(name: str) -> Mapping[str, Any]:
     """Parse ``rules/tables/<name>.yaml``; raises ConfigurationError if it is missing or not a mapping."""
     text = shipped("tables", f"{name}.yaml").read_text(encoding="utf-8")
     try:
-        table = yaml.load(text, Loader=_LOADER)  # noqa: S506 - both loaders are safe ones
+        table = yaml.load(text, Loader=_LOADER)  # both loaders are safe ones
     except yaml.YAMLError as error:
         raise ConfigurationError(f"rules/tables/{name}.yaml: {error}") from error
     if not isinstance(table, dict):
