@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import argparse
 import json
 import sys
 from collections.abc import Sequence
@@ -11,21 +10,21 @@ from rich.console import Console
 from rich.table import Table
 
 from verify.api import foresee, structure_text
-from verify.cli.files import write_output
+from verify.cli.files import require_writable, write_output
+from verify.cli.parsing import CommandParser, frequency
 from verify.cli.structures import add_structure, structure_of
-from verify.errors import UsageError
 from verify.expectations.model import Expectation
 
 NUCLEI = ("1H", "13C", "19F", "31P")
 
 
-def options() -> argparse.ArgumentParser:
+def options() -> CommandParser:
     """Options of the command."""
-    found = argparse.ArgumentParser(prog="peakwitness foresee", description="Show what the spectrum must show.")
+    found = CommandParser("foresee", "Show what the spectrum of a structure should show.")
     add_structure(found)
     found.add_argument("--nucleus", choices=NUCLEI, default="1H")
     found.add_argument("--solvent", metavar="NAME", default="CDCl3")
-    found.add_argument("--mhz", metavar="N", type=float, default=400.0, help="1H frequency of the magnet in MHz")
+    found.add_argument("--mhz", metavar="N", type=frequency, default=400.0, help="1H frequency of the magnet in MHz")
     found.add_argument("--json", metavar="FILE", help="write the expectations as JSON (- for standard output)")
     found.add_argument("--trail", action="store_true", help="show base and increments of every window")
     return found
@@ -34,8 +33,7 @@ def options() -> argparse.ArgumentParser:
 def run(arguments: Sequence[str]) -> int:
     """Run the command; returns the exit status."""
     given = options().parse_args(list(arguments))
-    if not 1.0 <= given.mhz <= 2000.0:
-        raise UsageError(f"--mhz {given.mhz:g}: give the 1H frequency of the magnet, such as 400")
+    require_writable(given.json)
     structure = next(iter(structure_of(given).values()))
     expected = foresee(structure_text(structure).text, given.nucleus, given.solvent, given.mhz)
     if given.json:

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import argparse
 import sys
 from collections.abc import Sequence
 
@@ -10,6 +9,7 @@ from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
+from verify.cli.parsing import CommandParser
 from verify.cli.structures import add_lists, add_structure, record_of
 from verify.errors import UsageError
 from verify.pipeline.one_record import build_case
@@ -20,11 +20,9 @@ from verify.structure.isomers import MOVES
 UNDECIDED = 3.0  # nats
 
 
-def options() -> argparse.ArgumentParser:
+def options() -> CommandParser:
     """Options of the command."""
-    found = argparse.ArgumentParser(
-        prog="peakwitness rivals", description="Hold near isomers of a structure against the same lists."
-    )
+    found = CommandParser("rivals", "Hold near isomers of a structure against the same lists.")
     add_structure(found)
     add_lists(found)
     found.add_argument("--families", default=",".join(MOVES), metavar="LIST", help=f"of {', '.join(MOVES)}")

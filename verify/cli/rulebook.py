@@ -2,13 +2,13 @@
 
 from __future__ import annotations
 
-import argparse
 import sys
 from collections.abc import Sequence
 
 from rich.console import Console
 from rich.table import Table
 
+from verify.cli.parsing import CommandParser
 from verify.errors import UsageError
 from verify.rulebook.documents import nearest
 from verify.rulebook.examples import failures
@@ -16,9 +16,9 @@ from verify.rulebook.model import Rule
 from verify.rulebook.source import load_rulebook, read_pack
 
 
-def options() -> argparse.ArgumentParser:
+def options() -> CommandParser:
     """Options of the command."""
-    found = argparse.ArgumentParser(prog="peakwitness rulebook", description="List the rules, explain one, or check a pack.")
+    found = CommandParser("rulebook", "List the rules, explain one, or check a pack of rules.")
     found.add_argument("rule", metavar="RULE", nargs="?", help="id of a rule to explain")
     found.add_argument("--policy", metavar="NAME", default="registration")
     found.add_argument("--rules", metavar="FOLDER", action="append", default=[], help="a folder of further rules")

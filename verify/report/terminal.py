@@ -6,12 +6,14 @@ No line begins with text of a record, so that nothing typed there is taken for a
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
 
 from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
 from verify.findings.finding import Finding, Level
+from verify.findings.location import Place
 from verify.findings.result import RecordResult, Verdict
 from verify.findings.run import RunResult
 from verify.report.words import (
@@ -30,8 +32,9 @@ from verify.report.words import (
 ALL_ROWS = 100  # registries up to this size are shown whole, larger ones without what is consistent
 MOST_ROWS = 400
 MOST_FINDINGS = 500
-FIXED_WIDTH = 35  # verdict, three counts and the gaps between the columns
+FIXED_WIDTH = 27  # verdict, number of findings and the gaps between the columns
 LONGEST_ID = 24
+SHORTEST_PLACE = 12
 FEWEST_WORDS = 24  # characters of a message worth showing in the table
 
 
@@ -88,40 +91,49 @@ def _rows(records: Sequence[RecordResult]) -> list[RecordResult]:
 
 
 def _table(console: Console, run: RunResult, rows: Sequence[RecordResult]) -> Table:
-    longest = min(max(len(record.compound) for record in rows), LONGEST_ID)
-    room = max(console.width - FIXED_WIDTH - max(longest, len("compound")), 12)
+    """Rule and place of the gravest finding; its message too, where the terminal is wide enough."""
+    marks = marks_of(console)
+    firsts = [_first(record) for record in rows]
+    longest_id = min(max(len("compound"), *(len(record.compound) for record in rows)), LONGEST_ID)
+    longest_rule = max(len("first finding"), *(len(first.rule) for first in firsts))
+    room = max(console.width - FIXED_WIDTH - longest_id - longest_rule, SHORTEST_PLACE)
+    places = [first.note or short_place(first.place, run.source, room) for first in firsts]
+    left = room - max(len("where"), *(len(place) for place in places)) - 2
     table = Table(box=None, pad_edge=False, show_edge=False, header_style="bold")
     table.add_column("verdict", no_wrap=True)
     table.add_column("compound", no_wrap=True, overflow="ellipsis", max_width=LONGEST_ID)
-    for name in ("err", "warn", "note"):
-        table.add_column(name, justify="right", no_wrap=True)
-    table.add_column("first finding", no_wrap=True, overflow="ellipsis", width=room)
-    for record in rows:
-        counts = (str(len(record.standing(level)) or "") for level in Level)
-        first = _first(record, run.source, room)
-        table.add_row(verdict_text(console, record.verdict), printable(record.compound), *counts, first)
+    table.add_column("found", justify="right", no_wrap=True)
+    table.add_column("first finding", no_wrap=True, overflow="ellipsis", style="bold")
+    table.add_column("where", no_wrap=True, overflow="ellipsis")
+    if left > FEWEST_WORDS:
+        table.add_column("", no_wrap=True, overflow="ellipsis", width=left)
+    for record, first, place in zip(rows, firsts, places, strict=True):
+        found = len(record.standing(Level.ERROR)) + len(record.standing(Level.WARNING))
+        verdict = Text(f"{marks[record.verdict]} {record.verdict}", style=COLOURS[record.verdict])
+        cells = (verdict, printable(record.compound), str(found or ""), first.rule, place)
+        table.add_row(*cells, *((first.message,) if left > FEWEST_WORDS else ()))
     return table
 
 
-def _first(record: RecordResult, source: str, room: int) -> Text:
-    """Rule, place and, where there is room, the message of the gravest finding; else why there is none."""
+@dataclass(frozen=True, slots=True)
+class _First:
+    """What the table says of a record; ``note`` stands for the place where nothing speaks."""
+
+    rule: str = ""
+    place: Place | None = None
+    message: str = ""
+    note: str = ""
+
+
+def _first(record: RecordResult) -> _First:
+    """The gravest standing finding; where there is none, the deviation that accepts one."""
     finding = gravest(record)
-    if finding is None:
-        return Text(_without_finding(record), style="dim")
-    text = Text(finding.rule, style="bold")
-    text.append(f" {short_place(finding.place, source, room - len(finding.rule) - 1)}", style="not bold")
-    if room - len(text) > FEWEST_WORDS:
-        text.append(f"  {printable(finding.message)}", style="not bold")
-    return text
-
-
-def _without_finding(record: RecordResult) -> str:
-    if record.unassessed_because:
-        return printable(record.unassessed_because)
-    for finding in record.findings:
-        if finding.deviation is not None:
-            return f"{finding.rule} accepted until {finding.deviation.expires_on}"
-    return ""
+    if finding is not None:
+        return _First(finding.rule, finding.place, printable(finding.message))
+    for accepted in record.findings:
+        if accepted.deviation is not None:
+            return _First(accepted.rule, note=f"accepted until {accepted.deviation.expires_on}")
+    return _First(message=printable(record.unassessed_because))
 
 
 def _shown(findings: Iterator[Finding], notes: bool) -> Iterator[Finding]:

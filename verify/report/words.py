@@ -26,9 +26,7 @@ PLAIN_MARKS = {
     Verdict.CONTRADICTED: "#",
     Verdict.UNASSESSED: "-",
 }
-CAUTION = (
-    "A consistent list is no proof of identity, purity or safety: nothing in it speaks against the structure."
-)
+CAUTION = "Consistent means that nothing in the lists speaks against the structure; it proves no identity or purity."
 
 
 def place_words(place: Place | None) -> str:
@@ -45,7 +43,7 @@ def short_place(place: Place | None, source: str, room: int) -> str:
     words = words.removeprefix(inside) if inside != "/" else words
     while len(words) > room and "/" in words.removeprefix("…/"):
         words = "…/" + words.removeprefix("…/").split("/", 1)[1]
-    return words
+    return words if len(words) <= room or place is None else f"…:{place.line}:{place.column}"
 
 
 def printable(text: str) -> str:
