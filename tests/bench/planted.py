@@ -15,7 +15,7 @@ from rdkit.rdBase import BlockLogs
 
 from verify.findings.location import Span
 from verify.peaklist.model import PeakList, Signal
-from verify.peaklist.stage import read_text
+from verify.peaklist.stage import read_peak_list
 
 Generator = Callable[[Published, random.Random, list[Published]], Published | None]
 
@@ -29,7 +29,7 @@ class Planted:
 
 
 def _read(published: Published, nucleus: str) -> PeakList:
-    return read_text(published.texts[nucleus], nucleus)
+    return read_peak_list(published.texts[nucleus], nucleus)
 
 
 def _with_text(published: Published, nucleus: str, text: str) -> Published:

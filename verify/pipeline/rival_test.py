@@ -18,7 +18,11 @@ from verify.structure.isomers import CHEAP, Relative, isomers
 from verify.structure.stage import read_structure
 
 MOST_RIVALS = 12
-LEAST_ODD = 2.0  # nats; a list explained this well cannot be explained better by more than this
+LEAST_ODD = 1.2  # nats; a 1H list explained this well cannot be explained better by much more
+LARGEST = 60  # heavy atoms; beyond, isomers are too many to hold against a list
+# Shifts of carbons vary more than their windows say when a group moves: what they win counts half and little,
+# what they lose counts in full (measured on published lists and on isomers planted in them).
+CARBON_SHARE, CARBON_MOST = 0.5, 2.0
 
 
 def rival_fits(
@@ -33,7 +37,8 @@ def rival_fits(
         return ()
     judged = tuple(s for s in case.spectra if s.assignment is not None and s.assignment.status == "explained")
     own = {s.number: s.assignment.cost for s in judged if s.assignment is not None}
-    if not judged or sum(own.values()) < least_odd:
+    proton = sum(own[s.number] for s in judged if s.spectrum.nucleus == "1H")
+    if not judged or structure.heavy > LARGEST or (proton < least_odd and least_odd > 0.0):
         return ()
     fits = []
     for relative in isomers(structure.smiles, families, most):
@@ -58,5 +63,8 @@ def _gain(relative: Relative, judged: tuple[SpectrumCase, ...], own: dict[int, f
         cost = list_cost(read, shared[conditions], spectrum.peaks, conditions[0])
         if cost is None:
             return None
-        total += own[spectrum.number] - cost
+        won = own[spectrum.number] - cost
+        if spectrum.spectrum.nucleus != "1H":
+            won = min(CARBON_MOST, CARBON_SHARE * won) if won > 0.0 else won
+        total += won
     return total
