@@ -43,7 +43,7 @@ def broken(named: Named, error: BaseException) -> RecordResult:
 
 def worker_died(named: Named) -> RecordResult:
     """Unassessed because the process that judged it ended without a word."""
-    message = "the tool broke on this record: its process ended at once (out of memory, or a library crashed)"
+    message = "the tool broke on this record: its process ended (no memory, a crash or an endless step of a library)"
     return _unassessed(named, TOOL_FAULT, message, _REPORT, "process ended")
 
 

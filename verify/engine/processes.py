@@ -5,7 +5,7 @@ from __future__ import annotations
 import multiprocessing
 import signal
 from collections import deque
-from collections.abc import Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from concurrent.futures import Future, ProcessPoolExecutor
 from concurrent.futures.process import BrokenProcessPool
 from dataclasses import dataclass
@@ -25,16 +25,20 @@ CHUNK = 8
 AHEAD = 3  # chunks handed out for each worker: enough to keep it busy, few enough to keep memory constant
 CPU_FACTOR = 3.0  # a record stuck inside a compiled library is ended at this many times its time limit
 
-_bench: Bench | None = None
+Judge = Callable[[Task, Bench], RecordResult]
 
 
 @dataclass(frozen=True, slots=True)
 class Pool:
-    """``chunk`` records travel together; ``workers`` processes judge them."""
+    """``chunk`` records travel together; ``workers`` processes judge them by ``judge``, which must be picklable."""
 
     settings: RunSettings
     workers: int
     chunk: int = CHUNK
+    judge: Judge = judge_task
+
+
+_prepared: tuple[Bench, Judge] | None = None  # of a worker process; the parent never sets it
 
 
 def run_in_processes(tasks: Iterable[Task], pool: Pool) -> Iterator[RecordResult]:
@@ -103,7 +107,7 @@ def _require_greeting(greeting: Future[bool]) -> None:
 
 def _start(pool: Pool, workers: int) -> ProcessPoolExecutor:
     return ProcessPoolExecutor(
-        workers, mp_context=_context(), initializer=_prepare, initargs=(pool.settings,)
+        workers, mp_context=_context(), initializer=_prepare, initargs=(pool.settings, pool.judge)
     )
 
 
@@ -125,28 +129,29 @@ def _cut(tasks: Iterable[Task], size: int) -> Iterator[Chunk]:
         yield chunk
 
 
-def _prepare(settings: RunSettings) -> None:
+def _prepare(settings: RunSettings, judge: Judge) -> None:
     """Runs first in each worker: Ctrl-C ends it at once and silently, and the rulebook is loaded."""
-    global _bench
+    global _prepared
     signal.signal(signal.SIGINT, signal.SIG_DFL)
-    _bench = make_bench(settings)
+    _prepared = make_bench(settings), judge
 
 
 def _greet() -> bool:
-    return _bench is not None
+    return _prepared is not None
 
 
 def _judge_chunk(chunk: Chunk) -> Results:
-    assert _bench is not None, "the worker was not prepared"
-    return tuple(_judge(task, _bench) for task in chunk)
+    assert _prepared is not None, "the worker was not prepared"
+    bench, judge = _prepared
+    return tuple(_judge(task, bench, judge) for task in chunk)
 
 
-def _judge(task: Task, bench: Bench) -> RecordResult:
+def _judge(task: Task, bench: Bench, judge: Judge) -> RecordResult:
     """One record under a limit of processor time as well: the system ends the process where Python cannot."""
     if bench.settings.seconds <= 0 or not hasattr(signal, "ITIMER_PROF"):
-        return judge_task(task, bench)
+        return judge(task, bench)
     signal.setitimer(signal.ITIMER_PROF, CPU_FACTOR * bench.settings.seconds)
     try:
-        return judge_task(task, bench)
+        return judge(task, bench)
     finally:
         signal.setitimer(signal.ITIMER_PROF, 0)

@@ -6,10 +6,8 @@ from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import lru_cache
 
-import yaml
-
 from verify.errors import ConfigurationError
-from verify.resources import shipped
+from verify.expectations.tables import read_table
 
 
 @dataclass(frozen=True, slots=True)
@@ -40,10 +38,9 @@ def _row(entry: Mapping[str, object]) -> CouplingClass:
 @lru_cache(maxsize=1)
 def coupling_table() -> Mapping[str, CouplingClass]:
     """All rows by label; raises ConfigurationError if the shipped table cannot be used."""
-    text = shipped("tables", "couplings.yaml").read_text(encoding="utf-8")
     try:
-        rows = [_row(entry) for entry in yaml.safe_load(text)["couplings"]]
-    except (yaml.YAMLError, KeyError, TypeError, ValueError) as error:
+        rows = [_row(entry) for entry in read_table("couplings")["couplings"]]
+    except (KeyError, TypeError, ValueError) as error:
         raise ConfigurationError(f"rules/tables/couplings.yaml: {error}") from error
     table = {row.label: row for row in rows}
     if len(table) != len(rows):
