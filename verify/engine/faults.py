@@ -20,8 +20,8 @@ EXPLAINED = {
     TOOL_FAULT: "The tool broke on this record; all others were judged as usual.",
     TIME_LIMIT: "Judging this record took longer than one record may take.",
 }
-_REPORT = "report this with the record, if you may share it; until then have the record checked by hand"
-_BY_HAND = "have the record checked by hand; a smaller structure or list may pass"
+_REPORT = "Report this with the record, if you may share it, and have the record checked by hand until then."
+_BY_HAND = "Have the record checked by hand, or shorten the list to the signals of this compound."
 
 
 @dataclass(frozen=True, slots=True)

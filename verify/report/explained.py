@@ -9,6 +9,8 @@ from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
+from verify.report.words import printable
+
 
 def print_explanation(console: Console, assignment: Sequence[Mapping[str, Any]]) -> None:
     """One table for each spectrum that was judged; atoms count from 1 in the order of the structure."""

@@ -24,10 +24,11 @@ FRACTIONS = (0.25, 0.33, 0.5, 0.66, 0.75, 1.0, 1.25, 1.5, 2.0, 3.0)
 def record_facts(case: RecordCase, policy: Policy) -> dict[str, Any]:
     """All facts of group "record"."""
     given = {s.spectrum.nucleus for s in case.spectra}
+    required = policy.required if case.reading.record is not None else ()  # a record not read may well hold them
     facts: dict[str, Any] = {name: fact.neutral for name, fact in FACTS["record"].items()}
     facts |= {
         "has_structure": case.structure is not None, "has_1h": "1H" in given, "has_13c": "13C" in given,
-        "lacking": ", ".join(n for n in policy.required if n not in given),
+        "lacking": ", ".join(n for n in required if n not in given),
         "carbonyl_without_line": _carbonyl_missing(case),
     }  # fmt: skip
     if case.structure is not None:
