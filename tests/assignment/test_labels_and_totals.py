@@ -58,11 +58,18 @@ def test_a_count_not_stated_makes_the_total_incomplete():
 )
 def test_a_common_factor_is_found_only_where_it_lands_in_bounds(reported, factor):
     groups = (expectation(0, 6), expectation(1, 2))
-    assert common_factor(reported, 8.0, 8.0, groups) == factor
+    signals = (signal(2.1, reported - 2.0), signal(3.5, 2.0))
+    assert common_factor(reported, 8.0, 8.0, groups, signals) == factor
+
+
+def test_two_molecules_need_integrals_that_can_be_halved():
+    groups = (expectation(0, 6), expectation(1, 2))
+    assert common_factor(16.0, 8.0, 8.0, groups, (signal(2.1, 13.0), signal(3.5, 3.0))) == 1.0
 
 
 def test_half_a_molecule_needs_groups_that_can_be_halved():
-    assert common_factor(2.0, 4.0, 4.0, (expectation(0, 3), expectation(1, 1))) == 1.0
+    signals = (signal(2.1, 1.0), signal(3.5, 1.0))
+    assert common_factor(2.0, 4.0, 4.0, (expectation(0, 3), expectation(1, 1)), signals) == 1.0
 
 
 def test_the_fewest_signals_are_the_windows_no_single_shift_can_join():

@@ -11,6 +11,7 @@ from verify.peaklist.model import Signal
 FEWEST = 5
 SMALLEST_PPM = 0.35
 AGREEING_SHARE = 0.8
+APART_PPM = 2.5  # a reference fault moves far regions alike; a ring system that is judged badly moves only its own
 
 
 def common_offset(
@@ -21,13 +22,14 @@ def common_offset(
     At least ``FEWEST`` signals must be assigned, four in five must deviate to the same side by half of it or more.
     """
     by_index = {e.environment.index: e for e in expectations}
-    deviations = []
+    deviations, centres = [], []
     for reading in readings:
         shares = [s for s in reading.shares if not by_index[s.environment].environment.exchangeable]
         if len(shares) == 1:
             centre = by_index[shares[0].environment].window.centre
             deviations.append(signals[reading.signal].centre - centre)
-    if len(deviations) < FEWEST:
+            centres.append(centre)
+    if len(deviations) < FEWEST or max(centres) - min(centres) < APART_PPM:
         return 0.0
     offset = median(deviations)
     agreeing = sum(1 for d in deviations if d * offset > 0 and abs(d) >= abs(offset) / 2.0)

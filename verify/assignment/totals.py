@@ -30,10 +30,13 @@ def rounding_allowed(signals: tuple[Signal, ...]) -> float:
     return ROUNDING + 0.1 * fractional
 
 
-def common_factor(reported: float, low: float, high: float, expectations: tuple[Expectation, ...]) -> float:
+def common_factor(
+    reported: float, low: float, high: float, expectations: tuple[Expectation, ...], signals: tuple[Signal, ...]
+) -> float:
     """Factor that brings a total into its bounds where every group of the structure can be divided by it, else 1.
 
-    A list for half of a molecule needs a structure whose every C-H group has an even number of nuclei.
+    A list for half of a molecule needs a structure whose every C-H group has an even number of nuclei; a list for two
+    molecules has even integrals throughout.
     """
     if low - ROUNDING <= reported <= high + ROUNDING or reported <= 0.0:
         return 1.0
@@ -41,7 +44,8 @@ def common_factor(reported: float, low: float, high: float, expectations: tuple[
     for factor in FACTORS:
         if not low - ROUNDING <= reported * factor <= high + ROUNDING:
             continue
-        if factor < 1.0 or all(count % round(factor) == 0 for count in counts):
+        whole = all(abs((s.nuclei or 0.0) * factor - round((s.nuclei or 0.0) * factor)) < 0.1 for s in signals)
+        if whole and (factor < 1.0 or all(count % round(factor) == 0 for count in counts)):
             return factor
     return 1.0
 
@@ -51,7 +55,7 @@ def hydrogen_totals(expectations: tuple[Expectation, ...], signals: tuple[Signal
     low, high = hydrogen_bounds(expectations)
     reported = sum(s.nuclei for s in signals if s.nuclei is not None)
     complete = all(s.nuclei is not None for s in signals)
-    factor = common_factor(reported, low, high, expectations) if complete else 1.0
+    factor = common_factor(reported, low, high, expectations, signals) if complete else 1.0
     return Totals(reported * factor, low, high, factor, complete)
 
 

@@ -26,7 +26,16 @@ def read_remarks(text: str) -> tuple[str, ...]:
     return tuple(sorted(name for name, pattern in _COMPILED if pattern.search(text)))
 
 
+def _small_words(body: str) -> int:
+    return sum(1 for word in _WORD.findall(body[:20000]) if word not in _ORDINARY)
+
+
+def is_told(body: str, signals: int) -> bool:
+    """True where a text tells about some signals in sentences, so that it need not name all of them."""
+    return _small_words(body) > 10 + 1.5 * signals
+
+
 def is_prose(body: str, signals: int) -> bool:
     """True where sentences tell about signals: many small words for each signal found."""
-    words = [w for w in _WORD.findall(body[:20000]) if w not in _ORDINARY]
-    return len(words) >= 12 and len(words) > 3 * signals
+    words = _small_words(body)
+    return words >= 12 and words > 3 * signals

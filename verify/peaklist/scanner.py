@@ -108,17 +108,22 @@ def _cut(text: str, found: re.Match[str], carbon: bool, start: int) -> Cut | Non
     return Cut(found.start(), shift_end, low, high, after, after, after)
 
 
+_UNITS_BEHIND = re.compile(r"(?:hz|mhz|k\)|°|%|x\s*c|h[,)]|carbons?|protons?|signals?|h\b|c\b)", re.IGNORECASE)
+_LABEL_BEFORE = re.compile(r"(?:\bJ[\w',()-]{0,8}\s*=\s*|\bC-|\bH-|[A-Za-z]-|m/z\s*=?\s*|[A-Za-z']\s*=\s*)$")
+_SHIFT_BEFORE = re.compile(r"(?:δ|ppm|[HC])\s*=\s*$")
+SMALLEST_WHOLE = 10.0  # a whole number below is a count or a label, not a 13C shift
+
+
 def _plausible(text: str, found: re.Match[str], carbon: bool, start: int) -> bool:
-    """False for numbers that are no shifts: whole numbers in 1H text without details, labels, counts."""
+    """False for numbers that are no shifts: labels, counts, whole numbers in 1H text without details."""
     low = found["low"]
     behind = text[found.end() : found.end() + 12].lstrip()
-    if behind[:2].lower() in ("hz", "mh", "h,", "h)", "k)", "°c") or behind[:1] in "%°":
-        return False
-    if re.match(r"(?:carbons?|protons?|signals?|H\b|C\b)", behind):
+    if _UNITS_BEHIND.match(behind):
         return False
     before = text[max(start, found.start() - 12) : found.start()]
-    if re.search(r"(?:\bJ[\w',()-]{0,8}\s*=\s*|\bC-|\bH-|[A-Za-z]-|m/z\s*=?\s*|[A-Za-z']\s*=\s*)$", before) and not re.search(r"(?:δ|ppm|[HC])\s*=\s*$", before):
+    if _LABEL_BEFORE.search(before) and not _SHIFT_BEFORE.search(before):
         return False
+    fraction = "." in low or "," in low
     if carbon:
-        return True
-    return "." in low or "," in low or behind[:1] == "("
+        return fraction or abs(float(low)) >= SMALLEST_WHOLE
+    return fraction or behind[:1] == "("

@@ -12,12 +12,13 @@ from verify.peaklist.details import Details, read_details
 from verify.peaklist.header import Header, read_header
 from verify.peaklist.model import PeakList, Signal
 from verify.peaklist.normalise import plain
-from verify.peaklist.remarks import is_prose, read_remarks
+from verify.peaklist.remarks import is_prose, is_told, read_remarks
 from verify.peaklist.scanner import Cut, cuts
 from verify.peaklist.structured import as_signal, render
 
 NUCLEI = ("1H", "13C", "19F", "31P")
 LONGEST_TEXT = 200_000
+SP2_FROM = 95.0  # ppm; 13C
 FURTHEST = {"1H": 60.0, "13C": 400.0, "19F": 500.0, "31P": 500.0}
 
 
@@ -33,19 +34,22 @@ def read_peak_list(text: str, nucleus: str | None = None) -> PeakList:
     problems: list[Problem] = []
     for cut in cuts(plain_text, header.end, carbon=kind != "1H"):
         _read_cut(text, plain_text, cut, kind, signals, problems)
-    signals = _without_words(signals, kind)
+    signals, left_out = _without_words(signals, kind)
     problems += _judge_text(text, plain_text, header, kind, signals)
+    problems += _unread(left_out)
     if any(p.blocks == "spectrum" for p in problems):
         signals = []
-    return _finished(text, kind, header, tuple(signals), tuple(problems))
+    told = is_told(plain_text[header.end :], len(signals))
+    return _finished(text, kind, header, tuple(signals), tuple(problems), ("selected",) if told else ())
 
 
 def _finished(
-    text: str, nucleus: str, header: Header, signals: tuple[Signal, ...], problems: tuple[Problem, ...]
+    text: str, nucleus: str, header: Header, signals: tuple[Signal, ...], problems: tuple[Problem, ...],
+    more: tuple[str, ...] = (),
 ) -> PeakList:
     return PeakList(
         nucleus=nucleus, text=text, signals=signals, problems=problems, field_mhz=header.field_mhz,
-        solvent=header.solvent, temperature_k=header.temperature_k, remarks=read_remarks(text),
+        solvent=header.solvent, temperature_k=header.temperature_k, remarks=tuple(sorted({*read_remarks(text), *more})),
     )  # fmt: skip
 
 
@@ -94,12 +98,31 @@ def _signal(text: str, cut: Cut, details: Details, shift: tuple[float, float, in
     )  # fmt: skip
 
 
-def _without_words(signals: list[Signal], nucleus: str) -> list[Signal]:
-    """In a 1H list with details, a number without any is part of a sentence, not a signal."""
+def _without_words(signals: list[Signal], nucleus: str) -> tuple[list[Signal], list[Signal]]:
+    """Signals, and what was left out: in a 1H list with details, a number without any may be part of a sentence,
+    or of a signal that could not be read."""
     if nucleus != "1H":
-        return signals
+        return _with_meant_letters(signals), []
     detailed = [s for s in signals if s.multiplicity is not None or s.nuclei is not None or s.couplings]
-    return detailed if len(detailed) * 2 >= len(signals) and detailed else signals
+    if not detailed or len(detailed) * 2 < len(signals):
+        return signals, []
+    return detailed, [s for s in signals if s not in detailed]
+
+
+def _with_meant_letters(signals: list[Signal]) -> list[Signal]:
+    """Some authors write C for every carbon: then it says nothing about hydrogen. A list that tells C from CH does."""
+    if any(s.attached_h == 1 and s.low > SP2_FROM for s in signals):
+        return signals
+    return [replace(s, attached_h=None) if s.attached_h == 0 else s for s in signals]
+
+
+def _unread(left_out: list[Signal]) -> list[Problem]:
+    """A number like a shift for which no details were found."""
+    expected = "details such as (s, 3H)"
+    return [
+        Problem("signal-unread", f"{s.centre:g} may be a signal, but no details of it were found", Locus(span=s.span), "", expected)
+        for s in left_out
+    ]
 
 
 def _judge_text(

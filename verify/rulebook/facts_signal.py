@@ -12,6 +12,7 @@ from verify.rulebook.facts import FACTS
 from verify.rulebook.model import RecordCase, SpectrumCase
 
 ROUNDED_J_HZ = 0.06
+SAME_J_HZ = 0.2
 LISTED_WITHIN = 2.0  # scales
 
 
@@ -46,7 +47,7 @@ def _couplings(spectrum: SpectrumCase, signal: Signal, reading: SignalReading) -
     values = [abs(c.value) for c in signal.couplings]
     unpaired = abs(reading.unpaired_j[0]) if reading.unpaired_j else 0.0
     return {
-        "j_declared": float(reading.letters_declare), "j_given": float(len(values)),
+        "j_declared": float(reading.letters_declare), "j_given": float(len(values)), "j_distinct": _distinct(values),
         "j_largest": max(values, default=0.0),
         "j_impossible": max((abs(j) for j in reading.impossible_j), default=0.0),
         "j_limit": float(reading.j_limit), "j_overlap": reading.overlap_reading,
@@ -54,6 +55,12 @@ def _couplings(spectrum: SpectrumCase, signal: Signal, reading: SignalReading) -
         "j_unpaired": unpaired, "j_near": _nearest(unpaired, signal, spectrum.peaks.signals),
         "j_decimals": float(max((c.decimals for c in signal.couplings), default=0)),
     }  # fmt: skip
+
+
+def _distinct(values: list[float]) -> float:
+    """Number of couplings that differ by more than the digital resolution."""
+    ordered = sorted(values)
+    return float(sum(1 for n, j in enumerate(ordered) if n == 0 or j - ordered[n - 1] > SAME_J_HZ))
 
 
 def _rounded(values: list[float], field_mhz: float | None) -> bool:

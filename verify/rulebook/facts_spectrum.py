@@ -12,6 +12,7 @@ from verify.peaklist.model import Signal
 from verify.rulebook.facts import FACTS
 from verify.rulebook.model import RecordCase, SpectrumCase
 
+ONE_DOUBLET_PPM = 0.03
 ENVELOPE_NUCLEI, ENVELOPE_OFF = 10.0, 2.2
 # Frequencies that belong to 13C on ordinary magnets, and are hardly ever those of 1H (common practice; MHz).
 CARBON_FREQUENCIES = (75.0, 101.0, 126.0, 151.0, 176.0, 201.0)
@@ -47,6 +48,7 @@ def _conditions(spectrum: SpectrumCase) -> dict[str, Any]:
         "field_odd": _odd_field(nucleus, float(field or 0.0)),
         "selected": "selected" in remarks,
         "hides": bool({"overlapped", "exchange"} & set(remarks)) or any(s.hidden for s in spectrum.peaks.signals),
+        "unread": float(sum(p.code == "signal-unread" for p in spectrum.peaks.problems)),
         "unit_hint": _hint(spectrum),
     }
 
@@ -106,9 +108,18 @@ def _hydrogens(case: RecordCase, spectrum: SpectrumCase, assignment: SpectrumAss
         "missing": float(sum(m.nuclei for m in required)),
         "missing_words": "; ".join(f"{m.nuclei:g} H of {m.window}" for m in required),
         "missing_cover": next((m.cover for m in required if m.cover), ""),
-        "group_cut": bool(assignment.group_cut),
+        "group_cut": bool(assignment.group_cut) and not _read_as_one(assignment, signals),
         "cut_words": _names(assignment.group_cut, spectrum.expectations),
     }  # fmt: skip
+
+
+def _read_as_one(assignment: SpectrumAssignment, signals: tuple[Signal, ...]) -> bool:
+    """True where every cut group lies in two signals as close as the lines of one doublet."""
+    for environment in assignment.group_cut:
+        mine = [signals[r.signal].centre for r in assignment.readings if any(s.environment == environment for s in r.shares)]
+        if mine and max(mine) - min(mine) > ONE_DOUBLET_PPM:
+            return False
+    return True
 
 
 def _names(environments: tuple[int, ...], expectations: tuple[Expectation, ...]) -> str:
