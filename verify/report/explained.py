@@ -9,7 +9,8 @@ from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
-from verify.report.words import printable
+from verify.findings.finding import Level
+from verify.report.words import LEVEL_COLOURS, printable
 
 
 def print_explanation(console: Console, assignment: Sequence[Mapping[str, Any]]) -> None:
@@ -22,7 +23,8 @@ def print_explanation(console: Console, assignment: Sequence[Mapping[str, Any]])
         console.print(_table(spectrum))
         for missing in spectrum["missing"]:
             if not missing["optional"]:
-                console.print(Text(f"  no signal: {missing['nuclei']:g} of {missing['window']}"))
+                words = f"no signal for {missing['nuclei']:g} of {missing['window']}"
+                console.print(Text(words, style=LEVEL_COLOURS[Level.ERROR]), soft_wrap=True)
 
 
 def _sum(spectrum: Mapping[str, Any]) -> str:
@@ -39,13 +41,19 @@ def _table(spectrum: Mapping[str, Any]) -> Table:
         table.add_column(name, overflow="fold")
     table.add_column("nats", justify="right")
     for signal in spectrum["signals"]:
-        shares = signal["environments"]
-        atoms = sorted({atom + 1 for share in shares for atom in share["atoms"]})
-        words = " + ".join(dict.fromkeys(share["words"] for share in shares))
-        centres = ", ".join(dict.fromkeys(f"{s['centre']:.2f} ± {2 * s['scale']:.2f}" for s in shares))
-        cost = sum(share["shift_nats"] + share["splitting_nats"] for share in shares)
-        words = words or signal["solvent_line"] or signal["impurity"] or "nothing"
-        table.add_row(
-            signal["text"], words, ", ".join(map(str, atoms)), centres, f"{cost:.1f}" if shares else ""
-        )
+        table.add_row(*_row(signal))
     return table
+
+
+def _row(signal: Mapping[str, Any]) -> tuple[str | Text, ...]:
+    """Typed text, what explains it, atoms, windows (centre and two scales) and cost of one signal."""
+    shares = signal["environments"]
+    typed = printable(signal["text"])
+    if not shares:
+        words = signal["solvent_line"] or signal["impurity"]
+        return typed, Text(words or "nothing", style="" if words else LEVEL_COLOURS[Level.ERROR]), "", "", ""
+    atoms = sorted({atom + 1 for share in shares for atom in share["atoms"]})
+    words = " + ".join(dict.fromkeys(share["words"] for share in shares))
+    windows = ", ".join(dict.fromkeys(f"{s['centre']:.2f} ± {2 * s['scale']:.2f}" for s in shares))
+    cost = sum(share["shift_nats"] + share["splitting_nats"] for share in shares)
+    return typed, words, ", ".join(map(str, atoms)), windows, f"{cost:.1f}"
