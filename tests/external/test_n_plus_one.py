@@ -38,9 +38,11 @@ def test_n_neighbours_give_n_plus_one_lines(neighbours: int) -> None:
 @pytest.mark.parametrize("neighbours", CHAINS)
 @pytest.mark.parametrize("lines", range(1, 8))
 def test_other_letters_are_held(neighbours: int, lines: int) -> None:
-    """One line more or less among five or more is a common slip of the eye; two are not."""
+    """One line more or less among five or more is a common slip of the eye, and so are two outer lines lost in the
+    noise: of 1:5:10:10:5:1 four stay, of 1:6:15:20:15:6:1 five."""
     near = 1 if max(neighbours + 1, lines) >= 6 or neighbours == 4 else 0
-    if abs(lines - neighbours - 1) <= near:
+    outer_lost = neighbours >= 5 and lines == neighbours - 1
+    if abs(lines - neighbours - 1) <= near or outer_lost:
         pytest.skip("the right letter, or too near to it")
     verdict, _ = _verdict(neighbours, LETTERS[lines - 1])
     assert verdict in ("queried", "contradicted")
