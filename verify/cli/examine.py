@@ -4,15 +4,13 @@ from __future__ import annotations
 
 import argparse
 import os
-import sys
 from collections.abc import Sequence
 from datetime import date
-
-from rich.console import Console
 
 from verify.cli.files import STANDARD_OUTPUT, require_writable, write_output
 from verify.cli.parsing import CommandParser
 from verify.cli.structures import add_lists, add_structure, lists_given, record_of
+from verify.cli.terminal import Terminal, listened_to
 from verify.engine.settings import Overrides, RunSettings, settings_for, whole_paths, whole_policy
 from verify.engine.work import judge_reading, make_bench
 from verify.errors import UsageError
@@ -56,10 +54,11 @@ def run(arguments: Sequence[str]) -> int:
     reading, settings = _from_file(given) if given.record else _from_options(given)
     bench = make_bench(settings)
     result = judge_reading(reading, bench)
-    if given.json:
-        write_output(given.json, json_text(result.as_dict()))
-    if given.json != STANDARD_OUTPUT:
-        print_record(Console(file=sys.stdout, highlight=False, markup=False), result, reading.record)
+    with listened_to():
+        if given.json:
+            write_output(given.json, json_text(result.as_dict()))
+        if given.json != STANDARD_OUTPUT:
+            print_record(Terminal(), result, reading.record)
     return status_of_record(result, (*bench.rulebook.policy.holds, Verdict.UNASSESSED))
 
 

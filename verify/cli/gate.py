@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import sys
 from collections.abc import Sequence
 
 from rich.console import Console
@@ -10,6 +9,7 @@ from rich.console import Console
 from verify.cli.files import STANDARD_OUTPUT, require_writable, write_output
 from verify.cli.parsing import CommandParser, number_of_workers
 from verify.cli.progress import Bar
+from verify.cli.terminal import Terminal, listened_to
 from verify.engine.run import gate_folder
 from verify.engine.settings import Overrides
 from verify.report.exit_status import status_of_run
@@ -52,10 +52,11 @@ def run(arguments: Sequence[str]) -> int:
     overrides = Overrides(given.policy, tuple(given.rules), given.deviations)
     with Bar(Console(stderr=True, quiet=given.quiet)) as bar:
         result = gate_folder(given.path, overrides, workers=given.workers, seconds=SECONDS, tell=bar.tell)
-    if given.json:
-        write_output(given.json, write_json(result))
-    if given.markdown:
-        write_output(given.markdown, write_markdown(result))
-    if not given.quiet and STANDARD_OUTPUT not in (given.json, given.markdown):
-        print_run(Console(file=sys.stdout, highlight=False, markup=False), result, notes=given.notes)
+    with listened_to():
+        if given.json:
+            write_output(given.json, write_json(result))
+        if given.markdown:
+            write_output(given.markdown, write_markdown(result))
+        if not given.quiet and STANDARD_OUTPUT not in (given.json, given.markdown):
+            print_run(Terminal(), result, notes=given.notes)
     return status_of_run(result)

@@ -42,8 +42,8 @@ def main(arguments: Sequence[str] | None = None) -> int:
     except KeyboardInterrupt:
         print("peakwitness: stopped; no report was written", file=sys.stderr)
         return INTERRUPTED
-    except BrokenPipeError:
-        _forget_standard_output()
+    except BrokenPipeError:  # whoever read the output went away, and the command had no verdict to tell
+        os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
         return 0
     except Exception as error:
         if shows_trace:
@@ -87,11 +87,6 @@ def _run(given: list[str]) -> int:
         raise UsageError(f'there is no command "{name}"{hint} (expected {known})\nTry: peakwitness --help')
     top_parser().parse_args(given)
     raise UsageError(f"no command is given; expected one of {', '.join(COMMANDS)}\nTry: peakwitness --help")
-
-
-def _forget_standard_output() -> None:
-    """What read the output went away: nothing more is written there, not even when Python ends."""
-    os.dup2(os.open(os.devnull, os.O_WRONLY), sys.stdout.fileno())
 
 
 if __name__ == "__main__":

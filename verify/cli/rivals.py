@@ -2,15 +2,14 @@
 
 from __future__ import annotations
 
-import sys
 from collections.abc import Sequence
 
-from rich.console import Console
 from rich.table import Table
 from rich.text import Text
 
 from verify.cli.parsing import CommandParser
 from verify.cli.structures import add_lists, add_structure, record_of
+from verify.cli.terminal import Terminal
 from verify.errors import UsageError
 from verify.pipeline.one_record import build_case
 from verify.pipeline.rival_test import rival_fits
@@ -40,8 +39,8 @@ def run(arguments: Sequence[str]) -> int:
     case = build_case(record_from_mapping(record_of(given)))
     if case.structure is None:
         raise UsageError(f"the structure cannot be read: {case.problems[0].message}")
-    fits = rival_fits(case, families, given.most, least_odd=0.0)
-    console = Console(file=sys.stdout, highlight=False)
+    fits = rival_fits(case, families, given.most)
+    console = Terminal()
     if not fits:
         console.print("No isomer of these families could be held against the lists.")
         return 0
