@@ -15,7 +15,7 @@ from scipy.optimize import linear_sum_assignment
 Matrix = NDArray[np.float64]
 
 SLACK = 7.0
-CROWDING = 1.0
+CROWDING = 1.6
 
 
 @dataclass(frozen=True, slots=True)

@@ -110,13 +110,29 @@ def _visit(search: _Search, barred: NDArray[np.bool_], fixed: NDArray[np.bool_],
         _visit(search, outside, fixed, best)
 
 
+def least_cost(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes) -> float:
+    """A bound in nats below which no placement of whole pieces can cost; 0 where counts are not stated.
+
+    ``costs`` has shape (P, S).
+    """
+    if not _stated(boxes.capacity) or not pieces:
+        return 0.0
+    search = _Search(costs, pieces, boxes)
+    _, cost = search.bound(np.zeros((len(pieces), search.signals + 1), dtype=np.bool_))
+    return cost
+
+
+def _stated(capacity: Matrix) -> bool:
+    return not (bool(np.isnan(capacity).any()) or bool(np.any(np.abs(capacity - np.rint(capacity)) > 0.05)))
+
+
 def branch_and_bound(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes) -> Placement | None:
     """Exact placement of indivisible pieces; None where counts are not stated or the search grew too large.
 
     ``costs`` has shape (P, S), nats for a whole piece.
     """
     capacity = boxes.capacity
-    if bool(np.isnan(capacity).any()) or bool(np.any(np.abs(capacity - np.rint(capacity)) > 0.05)):
+    if not _stated(capacity):
         return None
     search = _Search(costs, pieces, boxes)
     best = _Best()

@@ -169,5 +169,11 @@ def _letters_price(
         return FAR_PATTERN
     price = NO_PATTERN if pattern is None else pattern.cost
     if environment.exchangeable and signal.nuclei is not None and signal.nuclei > environment.count + 0.5:
-        return min(price, MERGED_EXCHANGEABLE)
+        # Letters describe the larger part of a merged signal; but merged OH and NH alone are no sharp multiplet.
+        return min(price, MERGED_EXCHANGEABLE if not _sharply_split(signal) or signal.nuclei > 2.5 else price)
     return price
+
+
+def _sharply_split(signal: Signal) -> bool:
+    letters = signal.multiplicity
+    return letters is not None and letters.kind == "first-order" and bool(signal.couplings) and not letters.broad

@@ -14,6 +14,7 @@ LEFT_OUT_EXCHANGED = 0.1
 LEFT_OUT_APROTIC = 0.7
 LEFT_OUT_SLOW = 1.4
 MISSING_GROUP = 9.0
+MISSING_SINGLE = 6.5  # below the price of a signal too small by one: where a CH is lost, it is named
 MISSING_DOUBTFUL = 1.5
 EXCHANGING_SOLVENTS = frozenset({"D2O", "CD3OD", "TFA-d", "CD3CO2D", "TFE-d3"})
 SLOW_SOLVENTS = frozenset({"DMSO-d6", "DMF-d7"})
@@ -53,7 +54,9 @@ def left_out_price(environment: Environment, solvent: str | None) -> float:
         else:
             price = LEFT_OUT_APROTIC
         return price * group_weight(environment.count)
-    return MISSING_DOUBTFUL if environment.may_vanish else MISSING_GROUP
+    if environment.may_vanish:
+        return MISSING_DOUBTFUL
+    return MISSING_SINGLE if environment.count < 1.5 else MISSING_GROUP
 
 
 def whole_groups(expectations: tuple[Expectation, ...], solvent: str | None) -> tuple[Piece, ...]:

@@ -77,6 +77,12 @@ def window_words(expectation: Expectation) -> str:
     return f"{expectation.words} {low:.2f} to {high:.2f} ppm"
 
 
+def _outside(signal: Signal, shares: tuple[Share, ...], by_index: dict[int, Expectation]) -> float:
+    """Distance in ppm to the windows of what explains a signal; of every group where nothing does."""
+    chosen = [by_index[s.environment] for s in shares] or list(by_index.values())
+    return min((outside(e.window, signal.low, signal.high) for e in chosen if e.window.judged), default=0.0)
+
+
 def _letters_declared(signal: Signal) -> int:
     letters = signal.multiplicity
     if letters is None or letters.kind != "first-order":
@@ -105,7 +111,7 @@ def read_signals(
             shares=mine,
             excess=explanation.placement.excess[number],
             deficit=explanation.placement.deficit[number],
-            outside_ppm=min((outside(e.window, signal.low, signal.high) for e in expectations), default=0.0),
+            outside_ppm=_outside(signal, mine, by_index),
             shift_gain=float(shift_gain[number]),
             splitting_gain=float(splitting_gain[number]),
             splitting_cost=sum(s.splitting_cost for s in mine),
@@ -139,7 +145,7 @@ def find_missing(
         expectation = by_index[environment]
         optional = bool(expectation.environment.exchangeable or expectation.environment.may_vanish)
         window = expectation.window
-        low, high = window.centre - 2.2 * window.scale, window.centre + 2.2 * window.scale
+        low, high = window.centre - window.scale, window.centre + window.scale
         hidden = [name for start, end, name in cover if end >= low and start <= high]
         found.append(Missing(environment, nuclei, window_words(expectation), expectation.words,
                              hidden[0] if hidden else "", optional))

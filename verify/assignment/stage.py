@@ -6,7 +6,7 @@ from verify.assignment.cost import distance, outside, price_all
 from verify.assignment.lines import LineExplanation, explain_lines
 from verify.assignment.model import Missing, Share, SignalReading, SpectrumAssignment, Totals
 from verify.assignment.offset import common_offset
-from verify.assignment.proton import explain, mixture_words
+from verify.assignment.proton import cost_bound, explain, mixture_words
 from verify.assignment.readings import find_missing, read_signals, window_words
 from verify.assignment.repair import repairs
 from verify.assignment.solvent_lines import impurities, line_names
@@ -18,6 +18,7 @@ from verify.structure.model import Structure
 
 SOFTENING_FLAGS = ("paramagnetic-metal", "metal", "radical", "boron", "mixture")
 MOST_NUCLEI = 400
+WEAK_LINES = frozenset({"CDCl3", "CD2Cl2", "C6D6"})
 
 
 def softening(structure: Structure, peaks: PeakList) -> str:
@@ -48,9 +49,13 @@ def assign(
 
 
 def list_cost(
-    structure: Structure, expectations: tuple[Expectation, ...], peaks: PeakList, solvent: str | None
+    structure: Structure, expectations: tuple[Expectation, ...], peaks: PeakList, solvent: str | None,
+    enough: float = float("inf"),
 ) -> float | None:
-    """Cost in nats of the best explanation alone, for comparing structures; None where the list is not judged."""
+    """Cost in nats of the best explanation alone, for comparing structures; None where the list is not judged.
+
+    Where a quick bound already shows that it costs ``enough`` or more, that bound is returned.
+    """
     mine = tuple(e for e in expectations if e.environment.nucleus == peaks.nucleus)
     if not peaks.signals or not mine or sum(e.environment.count for e in mine) > MOST_NUCLEI:
         return None
@@ -59,7 +64,8 @@ def list_cost(
         return explain_lines(peaks, mine, bool(softening(structure, peaks)), names).cost
     totals = hydrogen_totals(mine, peaks.signals)
     prices = price_all(mine, peaks.signals, _hydrogens(structure, mine))
-    return explain(peaks, mine, prices, solvent, totals.factor, names).placement.cost
+    bound = cost_bound(peaks, mine, prices, solvent, totals.factor, names)
+    return bound if bound >= enough else explain(peaks, mine, prices, solvent, totals.factor, names).placement.cost
 
 
 def _hydrogens(structure: Structure, expectations: tuple[Expectation, ...]) -> dict[int, int]:
@@ -73,8 +79,13 @@ def _hydrogens(structure: Structure, expectations: tuple[Expectation, ...]) -> d
 
 
 def _covers(solvent: str | None, nucleus: str) -> tuple[tuple[float, float, str], ...]:
+    """Ranges in ppm that a solvent hides: water, and residual lines of solvents that show several of them.
+
+    The single weak line of CDCl3, CD2Cl2 or C6D6 hides nothing but what stands exactly under it.
+    """
     lines = solvent_lines(solvent, nucleus) if solvent else ()
-    return tuple((line.shift - line.tolerance, line.shift + line.tolerance, line.name) for line in lines)
+    strong = [line for line in lines if line.kind == "water" or solvent not in WEAK_LINES]
+    return tuple((line.shift - line.tolerance, line.shift + line.tolerance, line.name) for line in strong)
 
 
 def _assign_proton(

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from verify.assignment.model import RivalFit
 from verify.assignment.stage import assign
 from verify.environments.model import EnvironmentSet
 from verify.environments.stage import find_environments
@@ -30,7 +31,7 @@ def examine_record(
     """Take one record all the way to its verdict; ``today`` is an ISO date that decides expiry of deviations."""
     case = build_case(reading)
     if rulebook.policy.rivals:
-        case = replace(case, rivals=rival_fits(case, most=rulebook.policy.rivals))
+        case = replace(case, rivals=_rivals(case, rulebook))
     findings = judge(case, rulebook, deviations, today)
     because = unassessed_because(case)
     return RecordResult(
@@ -42,6 +43,11 @@ def examine_record(
         unassessed_because=because,
         summary=summary_of(case),
     )
+
+
+def _rivals(case: RecordCase, rulebook: Rulebook) -> tuple[RivalFit, ...]:
+    """Near isomers that may explain the lists better by what the policy calls much."""
+    return rival_fits(case, most=rulebook.policy.rivals, least_gain=rulebook.policy.limits.get("rival_gain", 0.0))
 
 
 def build_case(reading: RecordReading) -> RecordCase:

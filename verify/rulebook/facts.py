@@ -129,7 +129,7 @@ FACTS: Mapping[str, Mapping[str, Fact]] = {
         "explained": Fact(True, "some environment explains it"),
         "explained_by": Fact("CH3", "the environments that explain it, in words"),
         "exchangeable": Fact(False, "only exchangeable hydrogen explains it"),
-        "outside_ppm": Fact(0.0, "distance to the nearest window of any environment", "ppm"),
+        "outside_ppm": Fact(0.0, "distance to the windows of what explains it, of any environment if nothing does", "ppm"),
         "shift_gain": Fact(0.0, "what freeing its shift wins over the whole list", "nats"),
         "shift_cost": Fact(0.0, "what its shift costs in the explanation", "nats"),
         "letters_gain": Fact(0.0, "what freeing its letters and J wins over the whole list", "nats"),

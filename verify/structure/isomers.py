@@ -108,16 +108,23 @@ def _substituent(atom: Chem.Atom) -> int | None:
 
 
 def _ring_position(mol: Chem.Mol) -> Iterator[tuple[Edit, str]]:
+    """Nearest free places first: the slip of one position is the likeliest."""
+    distances = Chem.GetDistanceMatrix(mol)
+    moves = []
     for system in _ring_systems(mol):
         carbons = [i for i in sorted(system) if mol.GetAtomWithIdx(i).GetAtomicNum() == 6]
         bearing = {i: s for i in carbons if (s := _substituent(mol.GetAtomWithIdx(i))) is not None}
         free = [i for i in carbons if mol.GetAtomWithIdx(i).GetTotalNumHs() == 1]
         for old, substituent in bearing.items():
             for new in free:
-                yield partial(_move, moved=substituent, old=old, new=new), "a ring substituent in another position"
+                edit = partial(_move, moved=substituent, old=old, new=new)
+                moves.append((distances[old, new], edit, "a ring substituent in another position"))
         for first, second in combinations(sorted(bearing), 2):
-            edit = partial(_exchange, first=(bearing[first], first), second=(bearing[second], second))
-            yield edit, "two ring substituents exchanged"
+            exchange = partial(_exchange, first=(bearing[first], first), second=(bearing[second], second))
+            moves.append((distances[first, second] + 0.5, exchange, "two ring substituents exchanged"))
+    moves.sort(key=lambda move: move[0])
+    for _, edit, words in moves:
+        yield edit, words
 
 
 _ACYL = Chem.MolFromSmarts("[#6:1][CX3;!R](=[OX1])[O,S,$([NX3;H1]):2][#6;!$([CX3]=[OX1]):3]")
