@@ -36,13 +36,15 @@ def _carbon(line: float | dict[str, Any]) -> str:
 
 def _record(example: dict[str, Any]) -> dict[str, Any]:
     field = example["frequency_mhz"] or 400
-    texts = {"1H": ", ".join(_proton(signal) for signal in example["signals"])}
-    if example["carbons"]:
-        texts["13C"] = ", ".join(_carbon(line) for line in example["carbons"])
+    lists = {
+        "1H": ", ".join(_proton(signal) for signal in example["signals"]),
+        "13C": ", ".join(_carbon(line) for line in example["carbons"] or ()),
+    }
     spectra = [
         {"nucleus": nucleus, "field_mhz": field if nucleus == "1H" else field / 4, "report": text}
         | ({"solvent": example["solvent"]} if example["solvent"] else {})
-        for nucleus, text in texts.items()
+        for nucleus, text in lists.items()
+        if text
     ]
     return {"compound": example["name"], "structure": {"smiles": example["smiles"]}, "spectra": spectra}
 
