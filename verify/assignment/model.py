@@ -25,7 +25,7 @@ class SignalReading:
 
     ``excess``            reported nuclei that nothing explains
     ``deficit``           nuclei of its environments above the reported number
-    ``outside_ppm``       distance to the nearest hard window of what explains it, of any environment if nothing does (0 = inside)
+    ``outside_ppm``       distance to the nearest hard window of what explains it, or of any environment (0 = inside)
     ``shift_gain``        nats won over the whole list if this shift were free
     ``splitting_gain``    nats won over the whole list if these letters and J were free
     ``splitting_cost``    cost of its letters and J in the chosen explanation

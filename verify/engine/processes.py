@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import multiprocessing
+import multiprocessing.forkserver as forkserver
 import signal
 from collections import deque
 from collections.abc import Callable, Iterable, Iterator
@@ -68,7 +69,7 @@ def run_in_processes(tasks: Iterable[Task], pool: Pool) -> Iterator[RecordResult
             waiting.popleft()
             yield from done
     finally:
-        executor.shutdown(wait=False, cancel_futures=True)
+        executor.shutdown(wait=True, cancel_futures=True)
 
 
 def _submit(executor: ProcessPoolExecutor, chunk: Chunk) -> Future[Results]:
@@ -96,7 +97,7 @@ def _rescued(chunk: Chunk, future: Future[Results], pool: Pool) -> Iterator[Reco
                 executor = _start(pool, 1)
                 yield worker_died(Named(task.key or task.file, task.file))
     finally:
-        executor.shutdown(wait=False, cancel_futures=True)
+        executor.shutdown(wait=True, cancel_futures=True)
 
 
 def _require_greeting(greeting: Future[bool]) -> None:
@@ -120,6 +121,11 @@ def _context() -> BaseContext:
         return multiprocessing.get_context("spawn")
     context = multiprocessing.get_context("forkserver")
     context.set_forkserver_preload(["verify.engine.work"])
+    held = signal.pthread_sigmask(signal.SIG_BLOCK, {signal.SIGINT})
+    try:
+        forkserver.ensure_running()  # it and its workers inherit the mask: Ctrl-C waits until they can end silently
+    finally:
+        signal.pthread_sigmask(signal.SIG_SETMASK, held)
     return context
 
 
@@ -133,6 +139,8 @@ def _prepare(settings: RunSettings, judge: Judge) -> None:
     """Runs first in each worker: Ctrl-C ends it at once and silently, and the rulebook is loaded."""
     global _prepared
     signal.signal(signal.SIGINT, signal.SIG_DFL)
+    if hasattr(signal, "pthread_sigmask"):
+        signal.pthread_sigmask(signal.SIG_UNBLOCK, {signal.SIGINT})
     _prepared = make_bench(settings), judge
 
 

@@ -8,6 +8,7 @@ to 31P over four bonds. Common practice, from memory; sizes are the business of 
 from __future__ import annotations
 
 from dataclasses import dataclass
+from itertools import pairwise
 
 from verify.environments.skeleton import AROMATIC, DOUBLE, SINGLE, Skeleton
 
@@ -56,7 +57,7 @@ def may_show(s: Skeleton, chain: tuple[int, ...], bonds: int, heteronuclear: boo
     """True if a coupling over this chain of heavy atoms is ever resolved."""
     if bonds <= 3:
         return True
-    codes = [s.order[a][b] for a, b in zip(chain, chain[1:], strict=False)]
+    codes = [s.order[a][b] for a, b in pairwise(chain)]
     if heteronuclear:
         return bonds <= 4 or any(c != SINGLE for c in codes)
     if bonds == 4:
@@ -77,14 +78,13 @@ def rigid_w(s: Skeleton, chain: tuple[int, ...]) -> bool:
     if b not in s.ring_neighbours[a] or c not in s.ring_neighbours[b]:
         return False
     held = [r for r in s.rings if a in r and b in r and c in r]
-    return any(len(r) <= 4 for r in held) or any(len(s.ring_neighbours[x]) > 2 for x in chain) and any(
-        len(r) <= 6 for r in held
-    )
+    bridged = any(len(s.ring_neighbours[x]) > 2 for x in chain)
+    return any(len(r) <= 4 for r in held) or (bridged and any(len(r) <= 6 for r in held))
 
 
 def path_words(s: Skeleton, chain: tuple[int, ...]) -> str:
     """Elements and bond orders along a chain: what makes two couplings of equal length differ."""
     text = str(s.number[chain[0]])
-    for a, b in zip(chain, chain[1:], strict=False):
+    for a, b in pairwise(chain):
         text += f"{MARKS.get(s.order[a][b], '~')}{s.number[b]}"
     return text

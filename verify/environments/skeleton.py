@@ -16,8 +16,9 @@ class Skeleton:
     a tetrahedral atom against ascending neighbours, 0 if none; ``stereo`` maps a double bond (low, high) to
     (atom at low, atom at high, trans); ``ring_neighbours[i]`` are those over ring bonds; ``block[i]`` numbers the
     ring system (-1: none); ``small_ring`` holds bonds in rings of fewer than eight atoms.
-    ``colour``: constitutional class. ``bonding`` is ``order`` with the charge of conjugated ions spread, ``delocalised``
-    their chain bonds and ``blurred`` the bonds at their rings. ``labelled``: deuterium or tritium is present.
+    ``colour``: constitutional class. ``bonding`` is ``order`` with the charge of conjugated ions spread,
+    ``delocalised`` their chain bonds and ``blurred`` the bonds at their rings. ``labelled``: deuterium or tritium
+    is present.
     """
 
     size: int

@@ -19,7 +19,8 @@ class Doubling:
         for number, why in enumerate(elements.slow):
             if not why or why == "hindered axis" or not _two_rotamers(part, number):
                 continue
-            for atom in _within(s.neighbours, (elements.legs[number][0][0], elements.legs[number][1][0]), ROTAMER_REACH):
+            ends = (elements.legs[number][0][0], elements.legs[number][1][0])
+            for atom in _within(s.neighbours, ends, ROTAMER_REACH):
                 self._near.setdefault(atom, f"{why} rotamer")
 
     def reason(self, atom: int) -> str:

@@ -119,9 +119,9 @@ def _with_meant_letters(signals: list[Signal]) -> list[Signal]:
 def _unread(left_out: list[Signal]) -> list[Problem]:
     """A number like a shift for which no details were found."""
     expected = "details such as (s, 3H)"
+    words = "may be a signal, but no details of it were found"
     return [
-        Problem("signal-unread", f"{s.centre:g} may be a signal, but no details of it were found", Locus(span=s.span), "", expected)
-        for s in left_out
+        Problem("signal-unread", f"{s.centre:g} {words}", Locus(span=s.span), "", expected) for s in left_out
     ]
 
 

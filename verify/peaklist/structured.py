@@ -51,8 +51,10 @@ def as_signal(entry: Mapping[str, object], span: Span) -> Signal | None:
         return None
     nuclei = _figure(entry.get("nuclei"))
     return Signal(
-        low=shift[0], high=shift[1], decimals=shift[2], span=span, multiplicity=_multiplicity(entry.get("multiplicity")),
-        couplings=_couplings(entry.get("couplings", ())), nuclei=nuclei if nuclei is not None and 0 < nuclei <= 500 else None,
+        low=shift[0], high=shift[1], decimals=shift[2], span=span,
+        multiplicity=_multiplicity(entry.get("multiplicity")),
+        couplings=_couplings(entry.get("couplings", ())),
+        nuclei=nuclei if nuclei is not None and 0 < nuclei <= 500 else None,
         annotation=str(entry.get("note") or ""), shift_span=span,
     )  # fmt: skip
 
@@ -65,7 +67,8 @@ def _problems(entry: Mapping[str, object], place: str, number: int) -> list[Prob
     letters = entry.get("multiplicity")
     if letters is not None and _multiplicity(letters) is None:
         locus = Locus(f"{place}/multiplicity", signal=number)
-        found.append(Problem("letters-unknown", f"'{letters}' is no known multiplicity", locus, "", "s, d, t, dd, m, br s ..."))
+        message = f"'{letters}' is no known multiplicity"
+        found.append(Problem("letters-unknown", message, locus, "", "s, d, t, dd, m, br s ..."))
     nuclei = entry.get("nuclei")
     if nuclei is not None and not 0 < (_figure(nuclei) or 0.0) <= 500:
         locus = Locus(f"{place}/nuclei", signal=number)

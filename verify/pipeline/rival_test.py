@@ -59,7 +59,8 @@ def _most_to_win(family: str, judged: tuple[SpectrumCase, ...]) -> float:
         aryl = {e.environment.index for e in spectrum.expectations if e.site == "aryl"}
         touched = [r for r in spectrum.assignment.readings if any(s.environment in aryl for s in r.shares)]
         most += sum(s.shift_cost + s.splitting_cost for r in touched for s in r.shares)
-        most += sum(CROWDING * (len(r.shares) - 1) for r in touched) + SLACK * sum(r.excess + r.deficit for r in touched)
+        most += sum(CROWDING * (len(r.shares) - 1) for r in touched)
+        most += SLACK * sum(r.excess + r.deficit for r in touched)
     return most
 
 

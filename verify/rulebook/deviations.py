@@ -1,4 +1,4 @@
-"""Accepted deviations: read from their file, matched to findings by fingerprint, reported when expired or without match."""
+"""Accepted deviations: read from their file, matched by fingerprint, reported when expired or without match."""
 
 from __future__ import annotations
 

@@ -34,7 +34,7 @@ def nearest(word: str, known: list[str]) -> str:
 
 
 def read_document(path: Path | Traversable, schema: str, *, trusted: bool = False) -> Mapping[str, Any]:
-    """The mapping of one YAML file; raises ConfigurationError. ``trusted`` files, those shipped, were checked by tests."""
+    """The mapping of one YAML file; raises ConfigurationError. ``trusted`` (shipped) files were checked by tests."""
     name = str(path)
     try:
         text = path.read_text(encoding="utf-8")
@@ -45,7 +45,7 @@ def read_document(path: Path | Traversable, schema: str, *, trusted: bool = Fals
     if len(text) > LARGEST:
         raise ConfigurationError(f"{name}: holds more than {LARGEST} characters")
     try:
-        found = yaml.load(text, Loader=_LOADER)  # noqa: S506 - both loaders are safe ones
+        found = yaml.load(text, Loader=_LOADER)  # both loaders are safe ones
     except yaml.MarkedYAMLError as error:
         mark = error.problem_mark
         place = f":{mark.line + 1}:{mark.column + 1}" if mark else ""

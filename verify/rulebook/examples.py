@@ -21,9 +21,11 @@ def facts_of(example: Example, rule: Rule, limits: Mapping[str, float]) -> dict[
             known = [f"{g}.{f}" for g in facts if g != "limits" for f in facts[g]]
             raise ConfigurationError(f"{rule.file}: example '{example.says}': no fact '{name}'{nearest(name, known)}")
         wanted = FACTS[group][fact].neutral
-        given = float(value) if isinstance(wanted, float) and isinstance(value, int) and not isinstance(value, bool) else value
+        whole = isinstance(value, int) and not isinstance(value, bool)
+        given = float(value) if isinstance(wanted, float) and whole else value
         if type(given) is not type(wanted):
-            raise ConfigurationError(f"{rule.file}: example '{example.says}': '{name}' must be a {FACTS[group][fact].type}")
+            wrong = f"'{name}' must be a {FACTS[group][fact].type}"
+            raise ConfigurationError(f"{rule.file}: example '{example.says}': {wrong}")
         facts[group][fact] = given
     return facts
 

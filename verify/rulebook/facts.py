@@ -1,4 +1,4 @@
-"""Every fact a rule may use: its group, name, type, unit, neutral value and meaning. ``rules/FACTS.md`` is written from it."""
+"""Every fact a rule may use: group, name, type, unit, neutral value and meaning. ``rules/FACTS.md`` comes from it."""
 
 from __future__ import annotations
 
@@ -88,7 +88,7 @@ FACTS: Mapping[str, Mapping[str, Fact]] = {
         "over_in_solvent": Fact(False, "1H: one or two hydrogens too many, in a range over the residual solvent line"),
         "solvent_hydrogens": Fact(0.0, "1H: hydrogens of signals that are residual solvent or water lines"),
         "acid_excess": Fact(0.0, "1H: unexplained hydrogens in broad signals where NH+ and OH lie"),
-        "salt_fits": Fact(False, "1H: one or two acidic hydrogens more make the total fit, and a basic nitrogen is there"),
+        "salt_fits": Fact(False, "1H: a basic nitrogen is there; one or two acidic hydrogens more make the sum fit"),
         "excess": Fact(0.0, "1H: reported hydrogens nothing explains"),
         "missing": Fact(0.0, "1H: C-H hydrogens no signal explains"),
         "missing_words": Fact("", "1H: the groups no signal explains, with their windows"),
@@ -129,7 +129,7 @@ FACTS: Mapping[str, Mapping[str, Fact]] = {
         "explained": Fact(True, "some environment explains it"),
         "explained_by": Fact("CH3", "the environments that explain it, in words"),
         "exchangeable": Fact(False, "only exchangeable hydrogen explains it"),
-        "outside_ppm": Fact(0.0, "distance to the windows of what explains it, of any environment if nothing does", "ppm"),
+        "outside_ppm": Fact(0.0, "distance to the windows of what explains it, or of any environment", "ppm"),
         "shift_gain": Fact(0.0, "what freeing its shift wins over the whole list", "nats"),
         "shift_cost": Fact(0.0, "what its shift costs in the explanation", "nats"),
         "letters_gain": Fact(0.0, "what freeing its letters and J wins over the whole list", "nats"),

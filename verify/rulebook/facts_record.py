@@ -15,8 +15,9 @@ from verify.structure.ions import read_formula, read_ion
 CARBONYL_FROM = 155.0
 WATER = {"H": 2, "O": 1}
 SOLVATES: Mapping[str, Mapping[str, int]] = {
-    "water": WATER, "CH2Cl2": {"C": 1, "H": 2, "Cl": 2}, "CHCl3": {"C": 1, "H": 1, "Cl": 3}, "EtOAc": {"C": 4, "H": 8, "O": 2},
-    "MeOH": {"C": 1, "H": 4, "O": 1}, "EtOH": {"C": 2, "H": 6, "O": 1}, "HCl": {"H": 1, "Cl": 1}, "TFA": {"C": 2, "H": 1, "F": 3, "O": 2},
+    "water": WATER, "CH2Cl2": {"C": 1, "H": 2, "Cl": 2}, "CHCl3": {"C": 1, "H": 1, "Cl": 3},
+    "EtOAc": {"C": 4, "H": 8, "O": 2}, "MeOH": {"C": 1, "H": 4, "O": 1}, "EtOH": {"C": 2, "H": 6, "O": 1},
+    "HCl": {"H": 1, "Cl": 1}, "TFA": {"C": 2, "H": 1, "F": 3, "O": 2},
 }  # fmt: skip
 FRACTIONS = (0.25, 0.33, 0.5, 0.66, 0.75, 1.0, 1.25, 1.5, 2.0, 3.0)
 
@@ -92,7 +93,7 @@ def elemental_facts(case: RecordCase) -> Iterator[tuple[ElementalEntry, dict[str
     record, structure = case.reading.record, case.structure
     if record is None or structure is None:
         return
-    whole = dict(structure.formula)
+    whole: dict[str, float] = dict(structure.formula)
     for component in structure.components:
         if not component.atoms:  # declared, not drawn
             for atom in component.mol.GetAtoms():

@@ -9,6 +9,7 @@ from verify.expectations.model import Expectation
 from verify.expectations.solvent import solvent_lines
 from verify.peaklist.model import Signal
 from verify.rulebook.facts import FACTS
+from verify.rulebook.facts_spectrum import field_of
 from verify.rulebook.model import RecordCase, SpectrumCase
 
 ROUNDED_J_HZ = 0.06
@@ -51,7 +52,7 @@ def _couplings(spectrum: SpectrumCase, signal: Signal, reading: SignalReading) -
         "j_largest": max(values, default=0.0),
         "j_impossible": max((abs(j) for j in reading.impossible_j), default=0.0),
         "j_limit": float(reading.j_limit), "j_overlap": reading.overlap_reading,
-        "j_rounded": _rounded(values, spectrum.spectrum.field_mhz or spectrum.peaks.field_mhz or spectrum.spectrum.default_field_mhz),
+        "j_rounded": _rounded(values, field_of(spectrum)),
         "j_unpaired": unpaired, "j_near": _nearest(unpaired, signal, spectrum.peaks.signals),
         "j_decimals": float(max((c.decimals for c in signal.couplings), default=0)),
     }  # fmt: skip

@@ -33,9 +33,14 @@ def spectrum_facts(case: RecordCase, spectrum: SpectrumCase) -> dict[str, Any]:
     return facts
 
 
+def field_of(spectrum: SpectrumCase) -> float | None:
+    """Frequency in MHz as typed in the record, else in the list, else as its registry assumes."""
+    return spectrum.spectrum.field_mhz or spectrum.peaks.field_mhz or spectrum.spectrum.default_field_mhz
+
+
 def _conditions(spectrum: SpectrumCase) -> dict[str, Any]:
     typed = spectrum.spectrum.solvent or spectrum.peaks.solvent or spectrum.spectrum.default_solvent or ""
-    field = spectrum.spectrum.field_mhz or spectrum.peaks.field_mhz or spectrum.spectrum.default_field_mhz
+    field = field_of(spectrum)
     nucleus = spectrum.spectrum.nucleus
     remarks = spectrum.peaks.remarks
     return {
@@ -116,7 +121,8 @@ def _hydrogens(case: RecordCase, spectrum: SpectrumCase, assignment: SpectrumAss
 def _read_as_one(assignment: SpectrumAssignment, signals: tuple[Signal, ...]) -> bool:
     """True where every cut group lies in two signals as close as the lines of one doublet."""
     for environment in assignment.group_cut:
-        mine = [signals[r.signal].centre for r in assignment.readings if any(s.environment == environment for s in r.shares)]
+        holding = (r for r in assignment.readings if any(s.environment == environment for s in r.shares))
+        mine = [signals[r.signal].centre for r in holding]
         if mine and max(mine) - min(mine) > ONE_DOUBLET_PPM:
             return False
     return True
@@ -130,7 +136,8 @@ def _names(environments: tuple[int, ...], expectations: tuple[Expectation, ...])
 def _envelope(signals: tuple[Signal, ...], off: float) -> bool:
     """A small deviation that one large multiplet may hold by the rounding of its integral."""
     large = [s for s in signals if (s.nuclei or 0.0) >= ENVELOPE_NUCLEI]
-    return 0.0 < off <= ENVELOPE_OFF and any(s.multiplicity is None or s.multiplicity.kind != "first-order" for s in large)
+    plain = (s.multiplicity is not None and s.multiplicity.kind == "first-order" for s in large)
+    return 0.0 < off <= ENVELOPE_OFF and not all(plain)
 
 
 def _range_over_solvent(spectrum: SpectrumCase, signals: tuple[Signal, ...]) -> bool:
@@ -145,7 +152,8 @@ def _lines(spectrum: SpectrumCase, assignment: SpectrumAssignment) -> dict[str, 
     lines = float(sum(max(1.0, s.nuclei or 1.0) for n, s in enumerate(signals) if n not in foreign))
     single = float(len(signals) - len(foreign))
     environments = float(sum(e.environment.nucleus == assignment.nucleus for e in spectrum.expectations))
-    carbons = float(sum(e.environment.count for e in spectrum.expectations if e.environment.nucleus == assignment.nucleus))
+    mine = (e.environment for e in spectrum.expectations if e.environment.nucleus == assignment.nucleus)
+    carbons = float(sum(environment.count for environment in mine))
     short = max(0.0, environments - max(lines, single))
     homeless = [signals[n] for n in assignment.lines_without_home]
     return {

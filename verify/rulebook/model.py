@@ -59,7 +59,7 @@ class Example:
 class Rule:
     """One rule as read from its file.
 
-    scope      "record", "mass", "elemental", "spectrum", "signal", "missing", "problem", "registry": how often it is asked
+    scope      "record", "mass", "elemental", "spectrum", "signal", "missing", "problem", "registry": how often asked
     nuclei     spectra it is asked of; empty = all
     codes      scope "problem": codes of problems it owns (a trailing ``*`` matches any ending)
     locus      where it points: "list", "signal", "shift", "letters", "nuclei", "coupling", "structure", "record",

@@ -44,7 +44,8 @@ def _span(signal: Signal, part: str, marked: tuple[float, ...]) -> Span:
     if part == "nuclei" and signal.nuclei_span is not None:
         return signal.nuclei_span
     if part == "coupling":
-        spans = [c.span for c in signal.couplings if c.span is not None and any(abs(abs(c.value) - m) < 1e-9 for m in marked)]
+        near = [c for c in signal.couplings if any(abs(abs(c.value) - m) < 1e-9 for m in marked)]
+        spans = [c.span for c in near if c.span is not None]
         if spans:
             return spans[0]
     return signal.span

@@ -18,7 +18,8 @@ DEEPEST = 5
 
 def shipped_policies() -> list[str]:
     """Names of the policies that come with the tool."""
-    return sorted(entry.name.removesuffix(".yaml") for entry in shipped("policies").iterdir() if entry.name.endswith(".yaml"))
+    names = (entry.name for entry in shipped("policies").iterdir())
+    return sorted(name.removesuffix(".yaml") for name in names if name.endswith(".yaml"))
 
 
 def load_policy(name: str, folder: Path | None = None) -> Policy:
@@ -58,6 +59,7 @@ def _policy(found: Mapping[str, Any]) -> Policy:
     levels = {rule: None if level == "off" else Level(level) for rule, level in found.get("levels", {}).items()}
     limits = {name: float(value) for name, value in found.get("limits", {}).items()}
     return Policy(
-        name=found["name"], title=found["title"], limits=limits, levels=levels, required=tuple(found.get("required", ())),
+        name=found["name"], title=found["title"], limits=limits, levels=levels,
+        required=tuple(found.get("required", ())),
         holds=tuple(found.get("holds", ("contradicted", "unassessed"))), rivals=int(found.get("rivals", 0)),
     )  # fmt: skip

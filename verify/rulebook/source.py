@@ -99,7 +99,8 @@ def _rule(data: Mapping[str, Any], name: str) -> Rule:
     return Rule(
         id=data["id"], title=data["title"], scope=scope, level=Level(data["level"]), condition=condition,
         message=data["message"], remedy=data["remedy"], basis=data["basis"], locus=data["locus"],
-        subject=data.get("subject", ""), file=name, nuclei=tuple(data.get("nuclei", ())), codes=tuple(data.get("codes", ())),
+        subject=data.get("subject", ""), file=name,
+        nuclei=tuple(data.get("nuclei", ())), codes=tuple(data.get("codes", ())),
         raised=Level(data["raised"]) if "raised" in data else None, raised_when=raised_when,
         softened=_softened(softened, Level(data["level"])),
         examples=tuple(_example(e) for e in data["examples"]),
@@ -162,5 +163,6 @@ def _digest(policy: Policy, rules: Sequence[Rule]) -> str:
     for rule in rules:
         content.update("\0".join((rule.id, rule.scope, rule.level, str(rule.softened), rule.condition.source)).encode())
         content.update(f"{rule.raised} {rule.raised_when.source if rule.raised_when else ''}".encode())
-        content.update("\0".join((rule.message, rule.remedy, rule.locus, rule.subject, *rule.nuclei, *rule.codes)).encode())
+        words = (rule.message, rule.remedy, rule.locus, rule.subject, *rule.nuclei, *rule.codes)
+        content.update("\0".join(words).encode())
     return content.hexdigest()

@@ -46,7 +46,8 @@ def _about_deviations(mine: Sequence[Deviation], found: Sequence[Finding], today
         if deviation.fingerprint not in marks:
             yield Problem("deviation-unmatched", f"the deviation {deviation.fingerprint} meets no finding ({who})")
         elif deviation.expires_on < today:
-            yield Problem("deviation-expired", f"the deviation {deviation.fingerprint} expired on {deviation.expires_on} ({who})")
+            words = f"the deviation {deviation.fingerprint} expired on {deviation.expires_on} ({who})"
+            yield Problem("deviation-expired", words)
 
 
 class _Bench:
@@ -66,9 +67,9 @@ class _Bench:
             self.findings.extend(self.about_problem(problem, problem.locus, ""))
         self._ask("record", base, "", self._record_locus)
         for entry, mass in mass_facts(self.case):
-            self._ask("mass", base | {"mass": mass}, "", lambda _, p=entry.pointer: Locus(p))  # type: ignore[misc]
+            self._ask("mass", base | {"mass": mass}, "", lambda _, p=entry.pointer: Locus(p))
         for analysis, element in elemental_facts(self.case):
-            self._ask("elemental", base | {"elemental": element}, "", lambda _, p=analysis.pointer: Locus(p))  # type: ignore[misc]
+            self._ask("elemental", base | {"elemental": element}, "", lambda _, p=analysis.pointer: Locus(p))
         for spectrum in self.case.spectra:
             self._spectrum(spectrum, base)
 
@@ -86,7 +87,7 @@ class _Bench:
             return
         for reading in assignment.readings:
             mine = facts | {"signal": signal_facts(spectrum, assignment, reading)}
-            self._ask("signal", mine, nucleus, lambda rule, r=reading: self._signal_locus(spectrum, rule, r))  # type: ignore[misc]
+            self._ask("signal", mine, nucleus, lambda rule, r=reading: self._signal_locus(spectrum, rule, r))
         for missing in assignment.missing:
             mine = facts | {"missing": missing_facts(self.case, spectrum, missing)}
             self._ask("missing", mine, nucleus, lambda rule: self._list_locus(spectrum, rule))

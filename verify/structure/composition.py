@@ -1,7 +1,8 @@
 """Elemental composition: formula, monoisotopic and average mass.
 
-Isotopic masses: AME2020, Wang et al., Chin. Phys. C 2021, 45, 030003; last digits of K, Br, I, and all values below the
-line "from memory", recalled. Standard atomic weights: CIAAW 2021, conventional values; recalled but for H to Cl, Br, Se.
+Isotopic masses: AME2020, Wang et al., Chin. Phys. C 2021, 45, 030003; last digits of K, Br, I, and all values below
+the line "from memory", recalled. Standard atomic weights: CIAAW 2021, conventional values; recalled but for H to Cl,
+Br, Se.
 """
 
 from __future__ import annotations

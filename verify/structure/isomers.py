@@ -1,10 +1,9 @@
 """Near relatives of a structure that a chemist could have drawn by mistake: isomers made by one small move.
 
-Families: "ring-position" (a substituent on another carbon of its aromatic ring system, or two
-exchanged), "reversed-ester"
-(ester, thioester or amide the other way round), "branching" (a methyl on the next carbon of its chain), "chain-position"
-(O, N, S or halogen on the next sp3 carbon), "oxygen-or-nitrogen" (alkyl on O or on N of a lactam or azine),
-"stereo" (another E/Z form or diastereomer).
+Families: "ring-position" (a substituent on another carbon of its aromatic ring system, or two exchanged),
+"reversed-ester" (ester, thioester or amide the other way round), "branching" (a methyl on the next carbon of its
+chain), "chain-position" (O, N, S or halogen on the next sp3 carbon), "oxygen-or-nitrogen" (alkyl on O or on N of a
+lactam or azine), "stereo" (another E/Z form or diastereomer).
 """
 
 from __future__ import annotations
