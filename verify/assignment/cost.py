@@ -14,7 +14,7 @@ from verify.assignment.labels import label_cost
 from verify.assignment.pieces import group_weight
 from verify.environments.model import Environment
 from verify.expectations.model import CouplingBlock, Expectation, Window
-from verify.expectations.splitting import PatternPrice, price_pattern
+from verify.expectations.splitting import PatternPrice, Prepared, prepare, price_pattern
 from verify.peaklist.model import Signal
 
 Matrix = NDArray[np.float64]
@@ -94,7 +94,7 @@ def _fits_inside(block: CouplingBlock, count: float, signal: Signal, windows: di
     return distance(window, signal.low, signal.high) <= 3.0 * window.scale
 
 
-def _pattern(blocks: tuple[CouplingBlock, ...], signal: Signal, strict: bool, merged: bool) -> PatternPrice:
+def _pattern(blocks: Prepared, signal: Signal, strict: bool, merged: bool) -> PatternPrice:
     multiplicity = signal.multiplicity
     if multiplicity is None:
         raise ValueError("a signal without letters has no pattern to price")
@@ -113,7 +113,7 @@ def _pattern(blocks: tuple[CouplingBlock, ...], signal: Signal, strict: bool, me
 
 
 def splitting_price(
-    expectation: Expectation, signal: Signal, windows: dict[int, Window], counts: dict[int, float]
+    expectation: Expectation, signal: Signal, windows: dict[int, Window], counts: dict[int, float], whole: Prepared
 ) -> PatternPrice | None:
     """Cheapest reading of the letters and J, also with one partner inside the same signal; None without letters."""
     if signal.multiplicity is None:
@@ -121,14 +121,14 @@ def splitting_price(
     count = expectation.environment.count
     merged = signal.nuclei is not None and signal.nuclei > count + 0.5
     blocks = expectation.couplings
-    best = _pattern(blocks, signal, expectation.strict_splitting, merged)
+    best = _pattern(whole, signal, expectation.strict_splitting, merged)
     if not merged or best.cost <= PARTNER_INSIDE or not blocks:
         return best
     for number, block in enumerate(blocks):
         if not _fits_inside(block, counts.get(block.environment, 1.0), signal, windows):
             continue
         rest = blocks[:number] + blocks[number + 1 :]
-        other = _pattern(rest, signal, expectation.strict_splitting, merged)
+        other = _pattern(prepare(rest), signal, expectation.strict_splitting, merged)
         if other.cost + PARTNER_INSIDE < best.cost:
             best = other.dearer(PARTNER_INSIDE)
     return best
@@ -147,9 +147,10 @@ def price_all(
     wanted = (shift <= FAR) | (shift.min(axis=0, initial=SHIFT_CAP) > LOST_SIGNAL)[None, :]
     for row, expectation in enumerate(expectations):
         environment = expectation.environment
+        whole = prepare(expectation.couplings)
         found: list[PatternPrice | None] = []
         for column, signal in enumerate(signals):
-            pattern = splitting_price(expectation, signal, windows, counts) if wanted[row, column] else None
+            pattern = splitting_price(expectation, signal, windows, counts, whole) if wanted[row, column] else None
             found.append(pattern)
             splitting[row, column] = _letters_price(environment, signal, pattern, bool(wanted[row, column]))
             label[row, column] = label_cost(

@@ -65,9 +65,12 @@ class PatternPrice:
         return replace(self, cost=self.cost + nats)
 
 
-@dataclass(frozen=True, slots=True)
-class _Facts:
-    """A block sequence in the form the search wants, required partners first, tight windows first."""
+@dataclass(frozen=True, slots=True, eq=False)
+class Prepared:
+    """Coupling blocks in the form the search wants, required partners first, tight windows first.
+
+    Equal blocks give the same object, so that its identity serves as a key.
+    """
 
     partners: tuple[Partner, ...]
     required: int
@@ -87,16 +90,17 @@ def _partner(number: int, block: CouplingBlock) -> Partner:
 
 
 @lru_cache(maxsize=4096)
-def _facts(blocks: tuple[CouplingBlock, ...]) -> _Facts:
+def prepare(blocks: tuple[CouplingBlock, ...]) -> Prepared:
+    """The blocks of one environment, ready to be priced many times."""
     partners = [_partner(n, b) for n, b in enumerate(blocks)]
     partners.sort(key=lambda p: (p.left_out == 0.0, p.seen, -p.low, p.high, p.block))
     required = sum(p.count for p in partners if p.left_out > 0.0)
     far = any(p.left_out == 0.0 and p.low < SMALL_J_HZ for p in partners)
     largest = max((p.high for p in partners), default=0.0)
-    return _Facts(tuple(partners), required, far, largest, tuple(b.label for b in blocks))
+    return Prepared(tuple(partners), required, far, largest, tuple(b.label for b in blocks))
 
 
-def _singlet(facts: _Facts, broad: bool) -> PatternPrice:
+def _singlet(facts: Prepared, broad: bool) -> PatternPrice:
     if broad:
         return PatternPrice(BROAD_SINGLET_COUPLED if facts.required else BROAD_SINGLET_FREE)
     if not facts.required:
@@ -108,7 +112,7 @@ def _singlet(facts: _Facts, broad: bool) -> PatternPrice:
     return PatternPrice(min(cost + LEFT_OUT_SMALL * small, SINGLET_CAP), "singlet on a coupled group", unused)
 
 
-def _many_lines(facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...]) -> tuple[float, str] | None:
+def _many_lines(facts: Prepared, counts: tuple[int, ...], js: tuple[float, ...]) -> tuple[float, str] | None:
     """Patterns of many lines are misread in two known ways; price and words, or None where neither
     applies."""
     required = [p for p in facts.partners if p.left_out > 0.0]
@@ -149,20 +153,20 @@ def _orders(counts: tuple[int, ...], js: tuple[float, ...]) -> list[tuple[float,
     return found
 
 
-def _drop_price(count: int, j: float, facts: _Facts, merged: bool) -> float:
+def _drop_price(count: int, j: float, facts: Prepared, merged: bool) -> float:
     if 0.0 <= j <= SMALL_J_HZ:
         return SMALL_DROPPED_EXPLAINED if facts.far else SMALL_DROPPED
     return SPURIOUS if merged and count == 1 else CAP
 
 
 def _place(
-    facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], merged: bool, cap: float
+    facts: Prepared, counts: tuple[int, ...], js: tuple[float, ...], merged: bool, cap: float
 ) -> Placement:
     letters = tuple(Letter(c, j, _drop_price(c, j, facts, merged)) for c, j in zip(counts, js, strict=True))
     return place_partners(facts.partners, letters, cap)
 
 
-def _nested(facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], merged: bool) -> PatternPrice:
+def _nested(facts: Prepared, counts: tuple[int, ...], js: tuple[float, ...], merged: bool) -> PatternPrice:
     """First-order letters with at least one splitting."""
     best, swapped, placement = CAP, False, None
     for price, order in _orders(counts, js):
@@ -189,14 +193,14 @@ def _nested(facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], merge
     return PatternPrice(best, reason, unused, (), swapped)
 
 
-def _words(facts: _Facts, unused: tuple[int, ...]) -> str:
+def _words(facts: Prepared, unused: tuple[int, ...]) -> str:
     if unused:
         return "partners left out: " + ", ".join(sorted({facts.names[n] for n in unused}))
     return "letters or J without a fitting partner"
 
 
 def _overlapped(
-    facts: _Facts, counts: tuple[int, ...], js: tuple[float, ...], nuclei: float, merged: bool
+    facts: Prepared, counts: tuple[int, ...], js: tuple[float, ...], nuclei: float, merged: bool
 ) -> PatternPrice | None:
     """Overlapped signals picked as one multiplet: the first "J" is a shift difference."""
     limit = max(facts.largest, J_FLOOR_HZ) + J_MARGIN_HZ
@@ -212,9 +216,8 @@ def _overlapped(
 
 @lru_cache(maxsize=32768)
 def _price(
-    blocks: tuple[CouplingBlock, ...], lines: tuple[int, ...], js: tuple[float, ...], nuclei: float,
-    merged: bool ) -> PatternPrice:
-    facts = _facts(blocks)
+    facts: Prepared, lines: tuple[int, ...], js: tuple[float, ...], nuclei: float, merged: bool
+) -> PatternPrice:
     counts = tuple(n - 1 for n in lines if n > 1)[:MAX_LETTERS]
     if not counts:
         return _singlet(facts, False)
@@ -230,7 +233,7 @@ def _price(
 
 
 def price_pattern(
-    blocks: Sequence[CouplingBlock],
+    blocks: Sequence[CouplingBlock] | Prepared,
     lines: tuple[int, ...],
     js: tuple[float, ...],
     *,
@@ -246,15 +249,15 @@ def price_pattern(
     (line count of each nested letter), ``js`` in Hz in the order typed, ``nuclei`` of the whole signal.
     ``merged``: the signal holds other environments too. ``strict``: open-chain sp3 with simple partners,
     where range and "app" excuse less."""
-    partners = tuple(blocks)
+    facts = blocks if isinstance(blocks, Prepared) else prepare(tuple(blocks))
     if kind == "multiplet":
         return PatternPrice(MULTIPLET)
     if kind != "first-order":
-        coupled = bool(partners) or nuclei >= 2.0
+        coupled = bool(facts.partners) or nuclei >= 2.0
         return PatternPrice(SECOND_ORDER_NAME if coupled else SECOND_ORDER_UNCOUPLED)
     if broad and all(n <= 1 for n in lines):
-        return _singlet(_facts(partners), True)
-    found = _price(partners, lines, tuple(abs(j) for j in js), nuclei, merged)
+        return _singlet(facts, True)
+    found = _price(facts, lines, tuple(abs(j) for j in js), nuclei, merged)
     factor = 1.0
     if broad:
         factor = BROAD_FACTOR

@@ -6,7 +6,7 @@ from collections.abc import Iterator, Sequence
 from functools import lru_cache
 
 from verify.expectations.model import CouplingBlock, Splitting
-from verify.expectations.pattern_price import MULTIPLET, PatternPrice, price_pattern
+from verify.expectations.pattern_price import MULTIPLET, PatternPrice, Prepared, prepare, price_pattern
 
 LETTERS = {1: "s", 2: "d", 3: "t", 4: "q", 5: "quint", 6: "sext", 7: "sept", 8: "oct", 9: "non"}
 ACCEPTED_UP_TO = 1.5
@@ -95,4 +95,4 @@ def accepted_splittings(blocks: Sequence[CouplingBlock]) -> tuple[Splitting, ...
     return _accepted(tuple(blocks))
 
 
-__all__ = ["PatternPrice", "accepted_splittings", "price_pattern"]
+__all__ = ["PatternPrice", "Prepared", "accepted_splittings", "prepare", "price_pattern"]
