@@ -31,7 +31,7 @@ class SignalReading:
     ``splitting_cost``    cost of its letters and J in the chosen explanation
     ``splitting_floor``   least cost of its letters and J over every environment it could be
     ``strict``            every environment it could be is open-chain sp3 with simple partners
-    ``expected_letters``  what the chosen environments would show, in words ("q or dq"), "" if free
+    ``expected_letters``  what the chosen environments would show, in words ("q or dq"), "" if they fit
     ``letters_declare``   number of J that the letters ask for (-1 = not defined, as for m)
     ``impossible_j``      J values (Hz) larger than any coupling of any environment it could be
     ``j_limit``           the largest J (Hz) believed for it

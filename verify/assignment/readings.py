@@ -16,6 +16,7 @@ from verify.peaklist.model import PeakList, Signal
 CANDIDATE_SHIFT_PRICE = 6.0
 J_MARGIN_HZ = 2.0
 FEW_LETTERS = 3
+WORDS_FROM = 1.0  # nats; letters that fit better need no words about what was expected
 
 
 def shares_by_signal(
@@ -106,6 +107,7 @@ def read_signals(
         limit = j_limit(tuple(sorted({*rows, *own})), expectations)
         floor = float(min((prices.splitting[row, number] for row in {*rows, *own}), default=0.0))
         patterns = [prices.patterns[row][number] for row in (own or rows)]
+        odd = max(floor, sum(s.splitting_cost for s in mine), float(splitting_gain[number]))
         readings.append(SignalReading(
             signal=number,
             shares=mine,
@@ -117,7 +119,7 @@ def read_signals(
             splitting_cost=sum(s.splitting_cost for s in mine),
             splitting_floor=floor,
             strict=bool(own) and all(expectations[row].strict_splitting for row in {*rows, *own}),
-            expected_letters=expected_letters(mine, by_index),
+            expected_letters=expected_letters(mine, by_index) if odd >= WORDS_FROM else "",
             expected_window="; ".join(window_words(by_index[s.environment]) for s in mine),
             letters_declare=_letters_declared(signal),
             impossible_j=_impossible(signal, limit),
