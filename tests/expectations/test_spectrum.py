@@ -16,7 +16,7 @@ def systems(smiles: str, field: float = 400.0) -> list[Simulated]:
     assert foresight.structure is not None
     return [
         simulate_system(system, field)
-        for system in spin_systems(foresight.structure.mol, foresight.expectations, "1H")
+        for system in spin_systems(foresight.structure, foresight.environments, foresight.expectations, "1H")
     ]
 
 

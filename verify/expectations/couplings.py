@@ -107,3 +107,19 @@ def coupling_blocks(
     sketch = sketch or draw_sketch(structure.mol)
     salt = "salt" in structure.flags or any(c.role == "counter-ion" for c in structure.components)
     return tuple(_of_one(sketch, e, environments, solvent, salt) for e in environments.all)
+
+
+def inner_blocks(structure: Structure, environments: EnvironmentSet) -> dict[int, Blocks]:
+    """Couplings inside environments of magnetically inequivalent nuclei (AA'XX'), by environment index.
+
+    They do not split first-order patterns and are left out of ``coupling_blocks``; a simulation needs them.
+    """
+    sketch = draw_sketch(structure.mol)
+    found: dict[int, Blocks] = {}
+    for owner in environments.all:
+        inside = [n for n in owner.neighbours if n.same and len(n.path) >= 2]
+        verdicts = [(n, _classify(sketch, owner, owner, n, None)) for n in inside]
+        blocks = tuple(_block(n, verdict) for n, verdict in verdicts if verdict[0])
+        if blocks:
+            found[owner.index] = blocks
+    return found

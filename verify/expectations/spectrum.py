@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from math import comb
 
@@ -10,8 +10,11 @@ import numpy as np
 from numpy.typing import NDArray
 from rdkit import Chem
 
-from verify.expectations.model import CouplingBlock, Expectation
+from verify.environments.model import EnvironmentSet
+from verify.expectations.couplings import Blocks, inner_blocks
+from verify.expectations.model import Expectation
 from verify.expectations.spins import Lines, simulate
+from verify.structure.model import Structure
 
 Array = NDArray[np.float64]
 # Weakly coupled parts are split off in steps, the exact treatment first (None); with the largest number of states
@@ -54,26 +57,30 @@ def _equivalent(nuclei: Sequence[Nucleus], couplings: Array) -> list[list[int]]:
     return list(groups.values())
 
 
-def _coupling(one: Expectation, other: int, bonds: int) -> float:
+def _coupling(one: Expectation, other: int, bonds: int, inner: Mapping[int, Blocks]) -> float:
     """Typical J in Hz between a nucleus and one of environment ``other`` that many bonds away."""
-    blocks: list[CouplingBlock] = [
-        b for b in one.couplings if b.environment == other and b.bonds == bonds and b.visibility != "hidden"
-    ]
-    return blocks[0].typical if blocks else 0.0
+    same = one.environment.index == other
+    couplings = inner.get(other, ()) if same else one.couplings
+    blocks = [b for b in couplings if b.environment == other and b.bonds == bonds]
+    return next((b.typical for b in blocks if same or b.visibility != "hidden"), 0.0)
 
 
-def spin_systems(mol: Chem.Mol, expectations: Sequence[Expectation], nucleus: str) -> tuple[SpinSystem, ...]:
+def spin_systems(
+    structure: Structure, environments: EnvironmentSet, expectations: Sequence[Expectation], nucleus: str
+) -> tuple[SpinSystem, ...]:
     """Coupled groups of one nucleus, each system connected; exchanging hydrogen is left out of couplings."""
     mine = [e for e in expectations if e.environment.nucleus == nucleus and e.window.judged]
     nuclei: list[Nucleus] = [(e, atom) for e in mine for atom in e.environment.atoms]
-    distances = Chem.GetDistanceMatrix(mol)
+    distances = Chem.GetDistanceMatrix(structure.mol)
+    inner = inner_blocks(structure, environments)
     couplings = np.zeros((len(nuclei), len(nuclei)))
     for first, (one, atom) in enumerate(nuclei):
         for second in range(first + 1, len(nuclei)):
             other, partner = nuclei[second]
             if one.environment.exchangeable or other.environment.exchangeable:
                 continue
-            j = _coupling(one, other.environment.index, round(float(distances[atom, partner])))
+            bonds = round(float(distances[atom, partner]))
+            j = _coupling(one, other.environment.index, bonds, inner)
             if j >= SMALLEST_J_HZ:
                 couplings[first, second] = couplings[second, first] = j
     groups = _equivalent(nuclei, couplings)
