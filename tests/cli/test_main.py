@@ -14,7 +14,7 @@ from verify.cli.main import COMMANDS, main
 from verify.version import VERSION
 
 ROOT = Path(__file__).parents[2]
-SLOW = ("rdkit", "numpy", "scipy", "pandas", "yaml", "rich", "jsonschema", "verify.engine", "verify.api")
+SLOW = ("rdkit", "numpy", "scipy", "pandas", "yaml", "rich", "jsonschema", "verify.engine.run", "verify.api")
 
 
 def _run(*arguments: str) -> subprocess.CompletedProcess[str]:

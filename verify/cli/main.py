@@ -10,6 +10,7 @@ from difflib import get_close_matches
 from importlib import import_module
 
 from verify.cli.parsing import CommandParser
+from verify.engine.interrupts import undisturbed
 from verify.errors import PeakwitnessError, UsageError
 from verify.version import VERSION
 
@@ -78,7 +79,8 @@ def _run(given: list[str]) -> int:
         return UsageError.exit_status
     name = given[0]
     if name in COMMANDS:
-        command = import_module(f"verify.cli.{name}")
+        with undisturbed():  # libraries half loaded fail in ways that look like faults of the tool
+            command = import_module(f"verify.cli.{name}")
         return int(command.run(given[1:]))
     if not name.startswith("-"):
         close = get_close_matches(name, COMMANDS, n=1, cutoff=0.5)

@@ -3,7 +3,6 @@
 from __future__ import annotations
 
 import multiprocessing
-import multiprocessing.forkserver as forkserver
 import signal
 from collections import deque
 from collections.abc import Callable, Iterable, Iterator
@@ -11,9 +10,11 @@ from concurrent.futures import Future, ProcessPoolExecutor
 from concurrent.futures.process import BrokenProcessPool
 from dataclasses import dataclass
 from itertools import islice
+from multiprocessing import forkserver, resource_tracker
 from multiprocessing.context import BaseContext
 
 from verify.engine.faults import Named, worker_died
+from verify.engine.interrupts import end_at_once, undisturbed
 from verify.engine.settings import RunSettings
 from verify.engine.work import Bench, judge_task, make_bench
 from verify.errors import ToolFault
@@ -47,7 +48,8 @@ def run_in_processes(tasks: Iterable[Task], pool: Pool) -> Iterator[RecordResult
     chunks = _cut(tasks, pool.chunk)
     waiting: deque[tuple[Chunk, Future[Results]]] = deque()
     executor = _start(pool, pool.workers)
-    greeting = executor.submit(_greet)
+    with undisturbed():
+        greeting = executor.submit(_greet)
     try:
         while True:
             for chunk in islice(chunks, AHEAD * pool.workers - len(waiting)):
@@ -75,7 +77,8 @@ def run_in_processes(tasks: Iterable[Task], pool: Pool) -> Iterator[RecordResult
 def _submit(executor: ProcessPoolExecutor, chunk: Chunk) -> Future[Results]:
     """Hand out a chunk; a pool that broke a moment ago gives a future that says so."""
     try:
-        return executor.submit(_judge_chunk, chunk)
+        with undisturbed():  # a process that is half started would end with a traceback
+            return executor.submit(_judge_chunk, chunk)
     except BrokenProcessPool as error:
         failed: Future[Results] = Future()
         failed.set_exception(error)
@@ -91,7 +94,7 @@ def _rescued(chunk: Chunk, future: Future[Results], pool: Pool) -> Iterator[Reco
     try:
         for task in chunk:
             try:
-                yield from executor.submit(_judge_chunk, (task,)).result()
+                yield from _submit(executor, (task,)).result()
             except BrokenProcessPool:
                 executor.shutdown(wait=True)
                 executor = _start(pool, 1)
@@ -121,11 +124,9 @@ def _context() -> BaseContext:
         return multiprocessing.get_context("spawn")
     context = multiprocessing.get_context("forkserver")
     context.set_forkserver_preload(["verify.engine.work"])
-    held = signal.pthread_sigmask(signal.SIG_BLOCK, {signal.SIGINT})
-    try:
-        forkserver.ensure_running()  # it and its workers inherit the mask: Ctrl-C waits until they can end silently
-    finally:
-        signal.pthread_sigmask(signal.SIG_SETMASK, held)
+    resource_tracker.ensure_running()  # first, because starting it lifts the mask
+    with undisturbed():
+        forkserver.ensure_running()  # it and its workers inherit the mask, until they can end silently
     return context
 
 
@@ -138,9 +139,7 @@ def _cut(tasks: Iterable[Task], size: int) -> Iterator[Chunk]:
 def _prepare(settings: RunSettings, judge: Judge) -> None:
     """Runs first in each worker: Ctrl-C ends it at once and silently, and the rulebook is loaded."""
     global _prepared
-    signal.signal(signal.SIGINT, signal.SIG_DFL)
-    if hasattr(signal, "pthread_sigmask"):
-        signal.pthread_sigmask(signal.SIG_UNBLOCK, {signal.SIGINT})
+    end_at_once()
     _prepared = make_bench(settings), judge
 
 

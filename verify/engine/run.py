@@ -17,7 +17,7 @@ from verify.sources.folder import FolderSource
 from verify.sources.model import Task
 from verify.version import VERSION
 
-FEW = 150  # fewer records than this are done before a pool of processes has come up
+FEW = 100  # fewer records than this are done before a pool of processes has come up
 Tell = Callable[[int, int], None]
 
 
