@@ -50,10 +50,11 @@ def _place(reading: RecordReading) -> Place:
     return place
 
 
-@pytest.mark.parametrize(("path", "count"), [(EXAMPLE, 45), (EXAMPLE / "incoming", 20)])
-def test_example_registries_are_read_whole(path: Path, count: int) -> None:
+@pytest.mark.parametrize(("path", "least"), [(EXAMPLE, 30), (EXAMPLE / "incoming", 14)])
+def test_example_registries_are_read_whole(path: Path, least: int) -> None:
     readings = _readings(path)
-    assert len(readings) == count
+    assert set(readings) == {file.parent.name for file in path.glob("compounds/*/record.yaml")}
+    assert len(readings) >= least
     assert all(reading.record is not None and reading.compound == key for key, reading in readings.items())
     told = {key: _codes(reading) for key, reading in readings.items() if reading.problems}
     assert told == ({} if path == EXAMPLE else {"INC-18": ["record-unknown-key"]})
