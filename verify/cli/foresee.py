@@ -27,6 +27,7 @@ def options() -> CommandParser:
     found.add_argument("--solvent", metavar="NAME", default="CDCl3", help="default: CDCl3")
     found.add_argument("--mhz", metavar="N", type=frequency, default=400.0, help="1H frequency in MHz, default: 400")
     found.add_argument("--json", metavar="FILE", help="write the expectations as JSON (- for standard output)")
+    found.add_argument("--svg", metavar="FILE", help="draw it as SVG (- for standard output)")
     found.add_argument("--trail", action="store_true", help="show base and increments of every window")
     return found
 
@@ -35,11 +36,16 @@ def run(arguments: Sequence[str]) -> int:
     """Run the command; returns the exit status."""
     given = options().parse_args(list(arguments))
     require_writable(given.json)
+    require_writable(given.svg)
     structure = structure_text(next(iter(structure_of(given).values()))).text
     expected = foresee(structure, given.nucleus, given.solvent, given.mhz)
     if given.json:
-        write_output(given.json, json_text([entry_of(expectation) for expectation in expected]))
-    if given.json != STANDARD_OUTPUT:
+        write_output(given.json, [json_text([entry_of(expectation) for expectation in expected])])
+    if given.svg:
+        from verify.cli.pictures import foreseen_svg
+
+        write_output(given.svg, [foreseen_svg(structure, given.nucleus, given.solvent, given.mhz)])
+    if STANDARD_OUTPUT not in (given.json, given.svg):
         _print(Terminal(), expected, given.trail)
     return 0
 
