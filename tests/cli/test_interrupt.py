@@ -28,7 +28,7 @@ def large_registry(tmp_path_factory: pytest.TempPathFactory) -> Path:
 
 @pytest.mark.skipif(not hasattr(os, "killpg"), reason="needs process groups of a POSIX system")
 @pytest.mark.parametrize("reaches_workers", [True, False])
-@pytest.mark.parametrize("wait", [0.4, 1.5, 3.0])
+@pytest.mark.parametrize("wait", [2.0, 4.0])
 def test_ctrl_c_ends_with_one_line(large_registry: Path, tmp_path: Path, wait: float, reaches_workers: bool) -> None:
     report = tmp_path / "report.json"
     command = [sys.executable, "-m", "verify", "gate", str(large_registry), "--workers", "2", "--json", str(report)]

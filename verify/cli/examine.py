@@ -56,7 +56,7 @@ def run(arguments: Sequence[str]) -> int:
     result = judge_reading(reading, bench)
     with listened_to():
         if given.json:
-            write_output(given.json, json_text(result.as_dict()))
+            write_output(given.json, [json_text(result.as_dict())])
         if given.json != STANDARD_OUTPUT:
             print_record(Terminal(), result, reading.record)
     return status_of_record(result, (*bench.rulebook.policy.holds, Verdict.UNASSESSED))

@@ -5,6 +5,7 @@ from __future__ import annotations
 import os
 import sys
 import tempfile
+from collections.abc import Iterable
 from pathlib import Path
 
 from verify.errors import UsageError
@@ -44,38 +45,41 @@ def require_writable(*targets: str | None) -> None:
             raise UsageError(f"{target}: the folder {folder} cannot be written to; give another file")
 
 
-def write_output(target: str, text: str) -> None:
-    """Write ``text``; a file appears whole or not at all. Raises UsageError where it cannot be written."""
+def write_output(target: str, parts: Iterable[str]) -> None:
+    """Write a text in parts; a file appears whole or not at all. Raises UsageError where it cannot be written."""
     if target == STANDARD_OUTPUT:
-        _to_standard_output(text)
+        _to_standard_output(parts)
         return
     path = Path(target)
     try:
-        _replace(path, text)
+        _replace(path, parts)
     except OSError as error:
         raise UsageError(f"{target}: cannot be written: {error.strerror}; give another file") from error
 
 
-def _to_standard_output(text: str) -> None:
+def _to_standard_output(parts: Iterable[str]) -> None:
     """Reports are UTF-8 whatever the terminal is set to."""
     sys.stdout.flush()
     binary = getattr(sys.stdout, "buffer", None)
-    if binary is None:  # standard output was replaced by a program that embeds the command
-        sys.stdout.write(text)
-        return
-    binary.write(text.encode("utf-8"))
-    binary.flush()
+    for part in parts:
+        if binary is None:  # standard output was replaced by a program that embeds the command
+            sys.stdout.write(part)
+        else:
+            binary.write(part.encode("utf-8"))
+    if binary is not None:
+        binary.flush()
 
 
-def _replace(path: Path, text: str) -> None:
+def _replace(path: Path, parts: Iterable[str]) -> None:
     if path.exists() and not path.is_file():  # a pipe or device cannot be replaced, only written to
-        path.write_text(text, encoding="utf-8")
+        with path.open("w", encoding="utf-8", newline="\n") as file:
+            file.writelines(parts)
         return
     real = path.resolve()  # a link stays a link
     handle, name = tempfile.mkstemp(dir=real.parent, prefix=f".{real.name}.", suffix=".part")
     try:
         with os.fdopen(handle, "w", encoding="utf-8", newline="\n") as file:
-            file.write(text)
+            file.writelines(parts)
         Path(name).chmod(_mode(real))
         Path(name).replace(real)
     except BaseException:

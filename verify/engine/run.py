@@ -19,6 +19,7 @@ from verify.version import VERSION
 
 FEW = 100  # fewer records than this are done before a pool of processes has come up
 Tell = Callable[[int, int], None]
+Keep = Callable[[RecordResult], RecordResult]
 
 
 def gate_folder(
@@ -29,20 +30,23 @@ def gate_folder(
     today: str = "",
     seconds: float = 0.0,
     tell: Tell | None = None,
+    keep: Keep | None = None,
 ) -> RunResult:
     """Judge every record of a registry folder.
 
     ``workers`` 0 chooses by the number of records and processors. ``tell(done, total)`` is called after each
-    record. Raises UsageError where ``path`` is no registry, ConfigurationError where its settings fail.
+    record. ``keep`` sees each record in order and gives back what the result shall hold of it.
+    Raises UsageError where ``path`` is no registry, ConfigurationError where its settings fail.
     """
     source = FolderSource(path)
     bench = make_bench(settings_for(source.registry, today or date.today().isoformat(), overrides, seconds))
     total = sum(1 for _ in source.tasks())
     watch = Watch(bench.rulebook, bench.settings.deviations, bench.settings.today)
     results = watch.see(run_tasks(source.tasks(), bench, chosen_workers(workers, total), total))
-    records = tuple(_told(results, total, tell))
+    kept = results if keep is None else map(keep, results)
+    records = tuple(_told(kept, total, tell))
     return RunResult(
-        source=path,
+        source=os.fsencode(path).decode("utf-8", "replace"),
         registry=source.registry.name,
         policy=bench.rulebook.policy.name,
         rulebook=bench.rulebook.digest,

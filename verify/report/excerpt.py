@@ -13,7 +13,8 @@ def excerpt(text: str, span: Span, width: int) -> tuple[str, str]:
     Where the text is longer, the part around the span is kept. Line breaks become spaces, so that columns hold.
     """
     line = "".join(c if c.isprintable() else " " for c in text)
-    start, end = min(max(span.start, 0), len(line)), min(max(span.end, 0), len(line))
+    start = min(max(span.start, 0), len(line))
+    end = min(max(span.end, start), len(line))
     first = 0
     if len(line) > width:
         middle = (start + min(end, start + width)) // 2

@@ -14,8 +14,8 @@ from verify.findings.run import RunResult
 FORMAT = "peakwitness-report/1"
 
 
-def report_of(run: RunResult) -> dict[str, Any]:
-    """The whole report as plain data; only ``made_at`` differs between two runs over the same input."""
+def report_of(run: RunResult, *, with_records: bool = True) -> dict[str, Any]:
+    """The report as plain data; only ``made_at`` differs between two runs over the same input."""
     return {
         "format": FORMAT,
         "tool": {"name": "peakwitness", "version": run.version},
@@ -26,13 +26,13 @@ def report_of(run: RunResult) -> dict[str, Any]:
         "counts": _counts(run),
         "clear": run.is_clear,
         "notices": [finding_entry(notice) for notice in run.notices],
-        "records": [record.as_dict() for record in run.records],
+        "records": [record.as_dict() for record in run.records] if with_records else [],
     }
 
 
-def write_json(run: RunResult) -> str:
+def write_json(run: RunResult, *, with_records: bool = True) -> str:
     """The report as text, keys in a fixed order, ending in a line break."""
-    return json_text(report_of(run))
+    return json_text(report_of(run, with_records=with_records))
 
 
 def json_text(value: Any) -> str:
