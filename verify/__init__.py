@@ -17,16 +17,20 @@ if TYPE_CHECKING:
     from verify.findings.finding import Finding, Level
     from verify.findings.result import RecordResult, Verdict
     from verify.findings.run import RunResult
+    from verify.peaklist.model import PeakList, Signal
+    from verify.peaklist.stage import read_peak_list
     from verify.record.model import Record
 
 _HOMES = {
     "ConfigurationError": "verify.errors",
     "Finding": "verify.findings.finding",
     "Level": "verify.findings.finding",
+    "PeakList": "verify.peaklist.model",
     "PeakwitnessError": "verify.errors",
     "Record": "verify.record.model",
     "RecordResult": "verify.findings.result",
     "RunResult": "verify.findings.run",
+    "Signal": "verify.peaklist.model",
     "ToolFault": "verify.errors",
     "UsageError": "verify.errors",
     "Verdict": "verify.findings.result",
@@ -34,16 +38,19 @@ _HOMES = {
     "examine_frame": "verify.api",
     "foresee": "verify.api",
     "gate": "verify.api",
+    "read_peak_list": "verify.peaklist.stage",
 }
 
 __all__ = [
     "ConfigurationError",
     "Finding",
     "Level",
+    "PeakList",
     "PeakwitnessError",
     "Record",
     "RecordResult",
     "RunResult",
+    "Signal",
     "ToolFault",
     "UsageError",
     "Verdict",
@@ -52,6 +59,7 @@ __all__ = [
     "examine_frame",
     "foresee",
     "gate",
+    "read_peak_list",
 ]
 
 
