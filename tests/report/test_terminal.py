@@ -79,7 +79,7 @@ def test_large_registries_show_what_is_not_consistent(
     text = _printed(make_run(*(make_record(f"C-{n}") for n in range(ALL_ROWS)), queried))
     assert "C-Q" in text
     assert "C-5" not in text
-    assert f"({ALL_ROWS} records not shown" in text
+    assert f"({ALL_ROWS} consistent records not shown)" in text
 
 
 def test_very_many_findings_are_cut_with_a_word(make_finding: Make, make_record: Make, make_run: Make) -> None:

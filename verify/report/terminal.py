@@ -44,8 +44,11 @@ def print_run(console: Console, run: RunResult, *, notes: bool = False) -> None:
     if rows:
         console.print(_table(console, run, rows))
     left_out = len(run.records) - len(rows)
-    if left_out:
+    consistent = run.counts[Verdict.CONSISTENT] if left_out else 0
+    if left_out > consistent:
         console.print(f"({counted(left_out, 'record')} not shown, none of them more serious)", style="dim")
+    elif left_out:
+        console.print(f"({counted(left_out, 'consistent record')} not shown)", style="dim")
     _print_findings(console, list(_shown(run.findings(), notes)))
     console.print()
     console.print(_sum(console, run), soft_wrap=True)
