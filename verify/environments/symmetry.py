@@ -6,6 +6,7 @@ from collections.abc import Hashable, Sequence
 from dataclasses import dataclass, replace
 from itertools import product
 
+from verify.environments.cages import settle_cages
 from verify.environments.elements import FREE, Elements, find_elements
 from verify.environments.search import Search
 from verify.environments.skeleton import Skeleton
@@ -31,6 +32,7 @@ class Orbits:
 def find_orbits(skeleton: Skeleton) -> tuple[Orbits, Elements]:
     """Classes of all atoms (node ``(atom, 0)``) and of the hydrogens of each CH2 that may differ."""
     elements = find_elements(skeleton)
+    settle_cages(skeleton, elements)
     pairs = frozenset(i for i in range(skeleton.size) if _pair(skeleton, elements, i))
     nodes = [(i, k) for i in range(skeleton.size) for k in ((0, 1) if i in pairs else (0,))]
     centres, axes = _relevant(skeleton, elements)
