@@ -103,10 +103,14 @@ def _without_words(signals: list[Signal], nucleus: str) -> tuple[list[Signal], l
     or of a signal that could not be read."""
     if nucleus != "1H":
         return _with_meant_letters(signals), []
-    detailed = [s for s in signals if s.multiplicity is not None or s.nuclei is not None or s.couplings]
+    detailed = [s for s in signals if _has_details(s)]
     if not detailed or len(detailed) * 2 < len(signals):
         return signals, []
-    return detailed, [s for s in signals if s not in detailed]
+    return detailed, [s for s in signals if not _has_details(s)]
+
+
+def _has_details(signal: Signal) -> bool:
+    return signal.multiplicity is not None or signal.nuclei is not None or bool(signal.couplings)
 
 
 def _with_meant_letters(signals: list[Signal]) -> list[Signal]:
