@@ -20,6 +20,7 @@ COMMANDS = {
     "examine": "judge one structure with its peak lists",
     "foresee": "show what the spectrum of a structure should show",
     "rivals": "show which isomers the same lists fit as well",
+    "drill": "plant errors in a registry's own records and count those held",
     "rulebook": "list the rules, explain one, or check a pack of rules",
 }
 DESCRIPTION = "Checks whether a structure could have given the NMR peak lists reported for it."

@@ -49,6 +49,23 @@ def isomers(smiles: str, families: tuple[str, ...] = CHEAP, limit: int = 12) -> 
     return tuple(found)
 
 
+def homologues(smiles: str) -> tuple[str, ...]:
+    """Canonical SMILES of the structures in which one CH3 has become C2H5."""
+    mol = Chem.MolFromSmiles(smiles)
+    if mol is None:
+        return ()
+    made = [_edited(mol, partial(_lengthen, methyl=a.GetIdx())) for a in mol.GetAtoms() if _is_methyl(a)]
+    return tuple(sorted({other for other in made if other is not None}))
+
+
+def _is_methyl(atom: Chem.Atom) -> bool:
+    return bool(atom.GetAtomicNum() == 6 and atom.GetDegree() == 1 and atom.GetTotalNumHs() == 3)
+
+
+def _lengthen(editable: Chem.RWMol, methyl: int) -> None:
+    editable.AddBond(methyl, editable.AddAtom(Chem.Atom(6)), Chem.BondType.SINGLE)
+
+
 def _edited(mol: Chem.Mol, edit: Edit) -> str | None:
     """Canonical SMILES after the move, None where it makes no valid molecule."""
     editable = Chem.RWMol(mol)
@@ -143,7 +160,7 @@ def _sp3_carbon(atom: Chem.Atom) -> bool:
 
 def _branching(mol: Chem.Mol) -> Iterator[tuple[Edit, str]]:
     for methyl in mol.GetAtoms():
-        if methyl.GetAtomicNum() != 6 or methyl.GetTotalNumHs() != 3 or methyl.GetDegree() != 1:
+        if not _is_methyl(methyl):
             continue
         owner = methyl.GetNeighbors()[0]
         if owner.GetAtomicNum() != 6 or owner.GetIsAromatic():
