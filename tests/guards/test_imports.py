@@ -87,6 +87,7 @@ def test_the_contracts_hold_for_an_orderly_package(plant: Plant, root: Path) -> 
         ("record/room", "import verify.peaklist"),
         ("expectations/room", "import verify.peaklist"),
         ("rulebook/room", "import rdkit.Chem"),
+        ("report/room", "from rdkit import Chem"),
         ("expectations/room", "import scipy.optimize"),
         ("report/room", "import pandas"),
     ],
