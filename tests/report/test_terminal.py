@@ -50,6 +50,12 @@ def test_notes_are_shown_only_if_asked_for(make_finding: Make, make_record: Make
     assert ": note shift-digits: " in _printed(run, notes=True)
 
 
+def test_notices_about_the_registry_are_always_shown(make_finding: Make, make_record: Make, make_run: Make) -> None:
+    notice = make_finding("deviation-unmatched", Level.NOTE, place=None)
+    text = _printed(make_run(make_record(), notices=(notice,)))
+    assert "\nnote deviation-unmatched: " in text
+
+
 def test_an_accepted_finding_is_named_but_does_not_stand(
     make_finding: Make, make_record: Make, make_run: Make, deviation: Deviation
 ) -> None:

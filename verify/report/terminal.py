@@ -49,7 +49,7 @@ def print_run(console: Console, run: RunResult, *, notes: bool = False) -> None:
         console.print(f"({counted(left_out, 'record')} not shown, none of them more serious)", style="dim")
     elif left_out:
         console.print(f"({counted(left_out, 'consistent record')} not shown)", style="dim")
-    _print_findings(console, list(_shown(run.findings(), notes)))
+    _print_findings(console, list(_shown(run, notes)))
     console.print()
     console.print(_sum(console, run), soft_wrap=True)
     console.print(CAUTION, style="dim", soft_wrap=True)
@@ -139,8 +139,11 @@ def _first(record: RecordResult) -> _First:
     return _First(message=printable(record.unassessed_because))
 
 
-def _shown(findings: Iterator[Finding], notes: bool) -> Iterator[Finding]:
-    return (f for f in findings if f.stands and (notes or f.level is not Level.NOTE))
+def _shown(run: RunResult, notes: bool) -> Iterator[Finding]:
+    """What stands; notes about records only if asked for, those about the registry always, for they are few."""
+    yield from (notice for notice in run.notices if notice.stands)
+    for record in run.records:
+        yield from (f for f in record.findings if f.stands and (notes or f.level is not Level.NOTE))
 
 
 def _print_findings(console: Console, shown: Sequence[Finding]) -> None:
