@@ -80,4 +80,5 @@ def _print(terminal: Terminal, drill: Drill) -> None:
         table.add_row(kind.kind, str(kind.planted), held, contradicted)
     terminal.print(Text(f"{drill.used} of {drill.records} records are consistent and carry the errors."))
     terminal.print(table)
-    terminal.print(Text("Held: contradicted, queried or unassessed. In brackets: 95 % intervals.\n--json names the records in which an error was not seen.", style="dim"))
+    terminal.print(Text("Held: contradicted, queried or unassessed. In brackets: 95 % intervals.", style="dim"))
+    terminal.print(Text("--json names the records in which an error was not seen.", style="dim"))

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from typing import Any
 
 from rdkit import Chem
 from rdkit.Chem.Draw import rdMolDraw2D
@@ -17,7 +18,7 @@ def structure_svg(mol: Chem.Mol, width: int, height: int, labels: dict[int, str]
         if atom < bare.GetNumAtoms():
             bare.GetAtomWithIdx(atom).SetProp("atomNote", label)
     drawer = rdMolDraw2D.MolDraw2DSVG(width, height)
-    options = drawer.drawOptions()
+    options: Any = drawer.drawOptions()  # its stubs give every option the wrong type
     options.clearBackground = False
     options.useBWAtomPalette()
     options.annotationFontScale = 0.62
