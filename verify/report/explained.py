@@ -10,7 +10,7 @@ from rich.table import Table
 from rich.text import Text
 
 from verify.findings.finding import Level
-from verify.report.words import LEVEL_COLOURS, printable
+from verify.report.words import LEVEL_COLOURS, counted, printable
 
 
 def print_explanation(console: Console, assignment: Sequence[Mapping[str, Any]]) -> None:
@@ -32,7 +32,8 @@ def _sum(spectrum: Mapping[str, Any]) -> str:
     allowed = f"{low:g}" if low == high else f"{low:g} to {high:g}"
     if spectrum["nucleus"] == "1H":
         return f"{spectrum['reported']:g} H listed, {allowed} allowed"
-    return f"{spectrum['reported']:g} lines listed, {allowed} environments"
+    lines = counted(round(spectrum["reported"]), "line")
+    return f"{lines} listed, {allowed} {'environment' if allowed == '1' else 'environments'}"
 
 
 def _table(spectrum: Mapping[str, Any]) -> Table:
