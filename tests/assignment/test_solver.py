@@ -11,8 +11,9 @@ from hypothesis import strategies as st
 
 from verify.assignment.boxes import CROWDING, SLACK, Boxes
 from verify.assignment.branching import branch_and_bound
+from verify.assignment.integer_program import integer
 from verify.assignment.pieces import Piece, kin_weights
-from verify.assignment.solver import integer, linear, place, whole
+from verify.assignment.solver import linear, place, whole
 
 
 def enumerate_best(costs, pieces, boxes):

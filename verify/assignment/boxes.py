@@ -10,7 +10,8 @@ from dataclasses import dataclass
 
 import numpy as np
 from numpy.typing import NDArray
-from scipy.optimize import linear_sum_assignment
+
+from verify.assignment.matcher import matching
 
 Matrix = NDArray[np.float64]
 
@@ -42,7 +43,7 @@ class Placement:
 
 def match(table: Matrix) -> tuple[NDArray[np.int64], NDArray[np.int64]]:
     """Rows and columns of the cheapest one-to-one matching of a cost table (rows not more than columns)."""
-    rows, columns = linear_sum_assignment(table)
+    rows, columns = matching()(table)
     return np.asarray(rows, dtype=np.int64), np.asarray(columns, dtype=np.int64)
 
 
