@@ -149,3 +149,18 @@ def test_branch_and_bound_settles_most_problems_itself():
         boxes = Boxes(capacity, np.full(5, SLACK), np.full(5, True))
         settled += branch_and_bound(rng.gamma(1.0, 4.0, (8, 5)), pieces, boxes) is not None
     assert settled >= 40
+
+
+def test_division_in_tenths_costs_no_more_than_the_integer_program_s_own():
+    rng = np.random.default_rng(3)
+    for _ in range(20):
+        pieces = tuple(piece(n, int(size)) for n, size in enumerate(rng.choice([1, 2, 3], 4)))
+        total = sum(p.nuclei for p in pieces)
+        share = np.rint(rng.dirichlet([2.0] * 5) * total * 10) / 10
+        share[-1] = round(total - float(share[:-1].sum()), 1)
+        if share.min() <= 0:
+            continue
+        boxes = Boxes(share, np.full(5, SLACK), np.full(5, False))
+        costs = rng.gamma(1.0, 2.0, (4, 5))
+        found = place(costs, pieces, boxes, divisible=True)
+        assert found.cost == pytest.approx(integer(costs, pieces, boxes, divisible=True).cost, abs=1e-4)

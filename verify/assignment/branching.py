@@ -18,7 +18,7 @@ Matrix = NDArray[np.float64]
 
 FORBIDDEN = 1e6
 OVERFILL = 4
-MOST_NODES = 300
+MOST_NODES = 600
 NOTHING = 1e-9
 
 

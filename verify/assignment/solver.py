@@ -7,6 +7,8 @@ costs its ``left_out``.
 
 from __future__ import annotations
 
+from dataclasses import replace
+
 import numpy as np
 from numpy.typing import NDArray
 
@@ -15,6 +17,7 @@ from verify.assignment.branching import branch_and_bound
 from verify.assignment.pieces import Piece, kin_weights
 
 Matrix = NDArray[np.float64]
+UNITS = 10  # parts of a nucleus that divisible groups are placed in
 
 
 
@@ -62,6 +65,19 @@ def crowding(placed: Matrix, pieces: tuple[Piece, ...], resolved: NDArray[np.boo
     return float(CROWDING * np.clip(load[resolved] - 1.0, 0.0, None).sum())
 
 
+def divided(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes) -> Placement | None:
+    """Placement of groups that may be divided, in tenths of a nucleus; None where counts are finer or not stated.
+
+    Fractional counts of mixtures are given to one decimal, as a rule.
+    """
+    tenths = boxes.capacity * UNITS
+    if bool(np.isnan(tenths).any()) or bool(np.any(np.abs(tenths - np.rint(tenths)) > 0.05)):
+        return None
+    fine = tuple(replace(piece, nuclei=piece.nuclei * UNITS) for piece in pieces)
+    placed, cost = linear(costs, fine, Boxes(np.rint(tenths), boxes.slack / UNITS, boxes.resolved))
+    return as_placement(placed / UNITS, boxes.capacity, cost)
+
+
 def place(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes, *, divisible: bool = False) -> Placement:
     """Least-cost placement: the linear answer where it is whole and leaves nothing over, else the exact program."""
     capacity = boxes.capacity
@@ -75,7 +91,7 @@ def place(costs: Matrix, pieces: tuple[Piece, ...], boxes: Boxes, *, divisible: 
         required = all(p.optional or placed[n].any() for n, p in enumerate(pieces))
         if whole(placed, pieces) and filled and required and cost + crowd < len(pieces) + SLACK:
             return as_placement(placed, capacity, cost + crowd)
-    found = None if divisible else branch_and_bound(costs, pieces, boxes)
+    found = divided(costs, pieces, boxes) if divisible else branch_and_bound(costs, pieces, boxes)
     if found is not None:
         return found
     # Loaded when it is needed: one record in thirty is not settled before, and the library takes 0.7 s to import.
