@@ -18,6 +18,7 @@ from verify.structure.model import Structure
 
 SOFTENING_FLAGS = ("paramagnetic-metal", "metal", "radical", "boron", "mixture")
 MOST_NUCLEI = 400
+MOST_SIGNALS = 300
 WEAK_LINES = frozenset({"CDCl3", "CD2Cl2", "C6D6"})
 
 
@@ -41,7 +42,7 @@ def assign(
     if not peaks.signals:
         return _empty(peaks, spectrum, "no-list")
     mine = tuple(e for e in expectations if e.environment.nucleus == peaks.nucleus)
-    if sum(e.environment.count for e in mine) > MOST_NUCLEI:
+    if sum(e.environment.count for e in mine) > MOST_NUCLEI or len(peaks.signals) > MOST_SIGNALS:
         return _empty(peaks, spectrum, "too-large")
     if peaks.nucleus == "1H":
         return _assign_proton(structure, mine, peaks, spectrum, solvent)

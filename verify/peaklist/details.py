@@ -16,7 +16,7 @@ _NUCLEI = re.compile(
     r"(?:~|ca\.?|approx\.?)?\s*(?:(?P<times>\d{1,2})\s*[x×*]\s*)?(?P<count>\d{1,12}(?:[.,]\d{1,3})?|(?P<cyr>\d))?\s*(?P<h>H|protons?\b)"
     r"(?P<back>\s*[x×]\s*\d{1,2}(?![\d.]))?(?![A-Za-z\d_'])(?!\s*-\s*[A-Za-z\d('])"
 )
-_NO_NUMBER = re.compile(r"(?<![A-Za-z\d-])(?P<word>[xXnyz?]|\?+)\s*H(?![A-Za-z\d'-])")
+_NO_NUMBER = re.compile(r"(?<![A-Za-z\d-])(?P<word>[xXnyz?]|\?+|\d+(?:\.\d+)?[eE][-+]?\d+)\s*H(?![A-Za-z\d'-])")
 _OF_CARBON = re.compile(
     r"(?:(?P<n>\d{1,2})\s*[x×*]?\s*(?:Ar-?|aryl\s*)?(?P<kind>CH3|CH2|CH|Cq|C)|[x×]\s*(?P<m>\d{1,2})(?P<none>)|(?P<k2>CH3|CH2|CH|Cq|C)\s*[x×]\s*(?P<m2>\d{1,2}))"
     r"(?![A-Za-z\d=≡])"

@@ -81,13 +81,13 @@ def _explained(reading: SignalReading, by_index: dict[int, Expectation]) -> dict
     mine = [by_index[share.environment] for share in reading.shares if share.environment in by_index]
     return {
         "excess": float(reading.excess), "deficit": float(reading.deficit), "explained": bool(reading.shares),
-        "explained_by": " and ".join(dict.fromkeys(e.words for e in mine)),
+        "explained_by": " and ".join(dict.fromkeys(e.words for e in mine)) or "every group",
         "exchangeable": bool(mine) and all(bool(e.environment.exchangeable) for e in mine),
         "outside_ppm": float(reading.outside_ppm), "shift_gain": float(reading.shift_gain),
         "shift_cost": float(sum(share.shift_cost for share in reading.shares)),
         "letters_gain": float(reading.splitting_gain), "letters_cost": float(reading.splitting_cost),
         "letters_floor": float(reading.splitting_floor), "strict": reading.strict,
-        "expected_letters": reading.expected_letters, "expected_window": reading.expected_window,
+        "expected_letters": reading.expected_letters, "expected_window": reading.expected_window or "elsewhere",
         "attached_wrong": reading.attached_h_wrong,
     }  # fmt: skip
 
