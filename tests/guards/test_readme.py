@@ -79,6 +79,26 @@ def test_a_right_readme_passes() -> None:
     assert faults(f"# x\n\n{GATE}\n{TEST}\n## Next\n\n    other\n") == []
 
 
+def lost_paths(root: Path) -> list[str]:
+    """Paths of the repository that a document names and that are not there."""
+    found = []
+    for document in ("README.md", "DEVELOPERS.md", "tests/bench/README.md", "registry_example/README.md"):
+        text = (root / document).read_text(encoding="utf-8") if (root / document).is_file() else ""
+        for path in re.findall(r"(?<![\w./-])(?:verify|rules|tests|registry_example)/[\w./-]*[\w/]", text):
+            if not (root / path).exists() and "<" not in path:
+                found.append(f"{document}: {path}")
+    return found
+
+
+def test_documents_name_only_what_is_there(root: Path) -> None:
+    assert lost_paths(root) == []
+
+
+def test_a_lost_path_is_found(plant: Plant) -> None:
+    top = plant({"README.md": "run `python tests/bench/speed.py`, see verify/api.py.", "verify/api.py": ""})
+    assert lost_paths(top) == ["README.md: tests/bench/speed.py"]
+
+
 @pytest.mark.parametrize("script", ["pytest", r"sed -n 's/^    \(make .*\)$/\1/p' README.md", ".venv/bin/pytest"])
 def test_a_drift_is_found(plant: Plant, script: str) -> None:
     assert drifted(plant({"README.md": GATE + TEST, ".ci/run": script}))
