@@ -2,7 +2,12 @@
 
 from __future__ import annotations
 
+from typing import Any
+
 from rdkit import Chem
+from rdkit.Chem import rdMolDescriptors
+
+LARGEST_CAGE_RING = 8  # members; bridgeheads of larger rings may point inwards. common practice
 
 
 def stereo_state(mol: Chem.Mol) -> tuple[str, bool]:
@@ -10,7 +15,8 @@ def stereo_state(mol: Chem.Mol) -> tuple[str, bool]:
 
     ``mol`` is not changed. OR groups count as undefined.
     """
-    found = [s for s in Chem.FindPotentialStereo(mol, cleanIt=False, flagPossible=True) if _counts(mol, s)]
+    every = [s for s in Chem.FindPotentialStereo(mol, cleanIt=False, flagPossible=True) if _counts(mol, s)]
+    found = _without_forced(mol, every)
     if not found:
         return "none", False
     unspecified = [s for s in found if s.specified != Chem.StereoSpecified.Specified]
@@ -23,6 +29,26 @@ def stereo_state(mol: Chem.Mol) -> tuple[str, bool]:
     double = any(s.type == Chem.StereoType.Bond_Double for s in unspecified)
     centres = sum(1 for s in found if s.type != Chem.StereoType.Bond_Double)
     return "one-undefined" if undefined == 1 else "several-undefined", double or centres > 1
+
+
+def _without_forced(mol: Chem.Mol, found: list[Chem.StereoInfo]) -> list[Chem.StereoInfo]:
+    """Leave out open bridgeheads of small bridged rings but one of each cage: geometry gives them their sense."""
+    heads: Any = []  # its stubs ask for another type than the list it fills
+    rdMolDescriptors.CalcNumBridgeheadAtoms(mol, heads)
+    small = [set(ring) for ring in mol.GetRingInfo().AtomRings() if len(ring) <= LARGEST_CAGE_RING]
+    kept = []
+    led: list[set[int]] = []
+    for info in sorted(found, key=lambda s: s.specified != Chem.StereoSpecified.Specified):
+        atom = info.centeredOn
+        cage = {head for head in heads for ring in small if {atom, head} <= ring}
+        if info.type != Chem.StereoType.Atom_Tetrahedral or atom not in cage:
+            kept.append(info)
+            continue
+        partners = [other for other in led if other & cage]
+        if not partners or info.specified == Chem.StereoSpecified.Specified:
+            kept.append(info)
+        led = [other for other in led if other not in partners] + [cage.union(*partners)]
+    return kept
 
 
 def is_declared_mixture(mol: Chem.Mol) -> bool:
