@@ -21,6 +21,7 @@ COMMANDS = {
     "foresee": "show what the spectrum of a structure should show",
     "rivals": "show which isomers the same lists fit as well",
     "drill": "plant errors in a registry's own records and count those held",
+    "restyle": "write a peak list in the order of a journal",
     "rulebook": "list the rules, explain one, or check a pack of rules",
 }
 DESCRIPTION = "Checks whether a structure could have given the NMR peak lists reported for it."
