@@ -153,6 +153,9 @@ def read_signals(signals: Sequence[Mapping[str, object]], nucleus: str, pointer:
     text, spans, problems = render(signals, nucleus, pointer)
     read = [as_signal(entry, span) for entry, span in zip(signals, spans, strict=True)]
     kept = tuple(s for s in read if s is not None)
+    # Numbers have lost their last zeros (5.10 is 5.1), but a list is typed to one precision.
+    digits = max((s.decimals for s in kept), default=0)
+    kept = tuple(replace(s, decimals=digits) for s in kept)
     if not kept:
         problems = (*problems, Problem("list-empty", "the list holds no signal", Locus(pointer), "spectrum", "signals"))
     return PeakList(nucleus, text, kept, problems)
