@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from typing import Any
 
 import cel
@@ -13,6 +13,11 @@ from verify.errors import ConfigurationError
 # CEL's own words, and nothing else: an expression cannot reach files, attributes or code.
 _NAME = re.compile(r"(?<![\w.\"'])([a-z]+)\.([a-z_0-9]+)(?!\s*\()")
 _TEXT = re.compile(r"\"(?:[^\"\\]|\\.)*\"|'(?:[^'\\]|\\.)*'")
+_BEYOND = re.compile(r"\s*(?:\[|\.\s*[A-Za-z_]\w*(?!\w*\s*\())")  # a path that goes on behind a fact
+OPERATORS = frozenset(
+    ("_>_", "_<_", "_>=_", "_<=_", "_==_", "_!=_", "_&&_", "_||_", "!_", "_+_", "_-_", "_*_", "_/_", "-_", "_?_:_", "@in")
+)
+FUNCTIONS = frozenset(("startsWith", "endsWith", "contains", "matches", "size"))
 LONGEST = 600
 MOST_REMEMBERED = 20_000
 Facts = Mapping[str, Mapping[str, Any]]
@@ -36,6 +41,7 @@ class Condition:
         self.source = source
         bare = _TEXT.sub(lambda m: " " * len(m.group()), source)
         self.names = tuple(dict.fromkeys(_NAME.findall(bare)))
+        _check_form(bare, self._program.variables(), self._program.functions())
         self._remembered: dict[tuple[object, ...], bool] = {}
 
     def __reduce__(self) -> tuple[type[Condition], tuple[str]]:
@@ -60,3 +66,18 @@ class Condition:
         if len(self._remembered) < MOST_REMEMBERED:
             self._remembered[values] = answer
         return answer
+
+
+def _check_form(bare: str, variables: Sequence[str], functions: Sequence[str]) -> None:
+    """Refuse what would only break when asked: names that are no ``group.fact``, and functions beyond the few."""
+    for name in sorted(functions):
+        if name not in OPERATORS | FUNCTIONS:
+            known = ", ".join(sorted(FUNCTIONS))
+            raise ConfigurationError(f"a condition may not use '{name}' (beside operators it may use {known})")
+    for found in _NAME.finditer(bare):
+        if _BEYOND.match(bare, found.end()):
+            raise ConfigurationError(f"'{found[0]}' is one value and has no parts")
+    rest = _NAME.sub(lambda m: " " * len(m.group()), bare)
+    for name in sorted(variables):
+        if re.search(rf"(?<![\w.]){re.escape(name)}\b", rest):
+            raise ConfigurationError(f"'{name}' alone is no fact; facts are written group.name, such as signal.shift")

@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import replace
 from typing import Any
 
-from verify.findings.finding import Finding
+from verify.findings.finding import Finding, Level
 from verify.findings.location import Locus, Place
 from verify.findings.result import RecordResult, verdict_of
 from verify.rulebook.deviations import fingerprint
@@ -20,7 +20,12 @@ def judge_in_registry(
     """The result with findings of rules of scope "registry". ``places``: where "record" and "structure" stand."""
     more = []
     for rule in rulebook.of("registry"):
-        if not rule.condition.holds(facts):
+        try:
+            speaks = rule.condition.holds(facts)
+        except (ArithmeticError, KeyError, TypeError, ValueError) as error:  # the other rules must still be asked
+            more.append(_rule_fault(result.compound, rule.id, error, places.get("record")))
+            continue
+        if not speaks:
             continue
         subject = fill(rule.message, facts)
         more.append(
@@ -33,3 +38,11 @@ def judge_in_registry(
         return result
     findings = tuple(sorted((*result.findings, *more), key=lambda f: f.sort_key))
     return replace(result, findings=findings, verdict=verdict_of(findings, bool(result.unassessed_because)))
+
+
+def _rule_fault(compound: str, rule: str, error: Exception, place: Place | None) -> Finding:
+    """A rule of a pack that its facts broke, told as a finding of ``rule-fault``."""
+    message = f"the rule '{rule}' could not be asked: {type(error).__name__}: {error}"
+    mark = fingerprint(compound, "rule-fault", "", rule)
+    remedy = "Correct the rule; its condition met facts it does not understand."
+    return Finding("rule-fault", Level.WARNING, message, Locus(), place, remedy, rule, mark)
