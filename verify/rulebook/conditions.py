@@ -15,7 +15,8 @@ _NAME = re.compile(r"(?<![\w.\"'])([a-z]+)\.([a-z_0-9]+)(?!\s*\()")
 _TEXT = re.compile(r"\"(?:[^\"\\]|\\.)*\"|'(?:[^'\\]|\\.)*'")
 _BEYOND = re.compile(r"\s*(?:\[|\.\s*[A-Za-z_]\w*(?!\w*\s*\())")  # a path that goes on behind a fact
 OPERATORS = frozenset(
-    ("_>_", "_<_", "_>=_", "_<=_", "_==_", "_!=_", "_&&_", "_||_", "!_", "_+_", "_-_", "_*_", "_/_", "-_", "_?_:_", "@in")
+    ("_>_", "_<_", "_>=_", "_<=_", "_==_", "_!=_", "_&&_", "_||_", "!_")
+    + ("_+_", "_-_", "_*_", "_/_", "-_", "_?_:_", "@in")
 )
 FUNCTIONS = frozenset(("startsWith", "endsWith", "contains", "matches", "size"))
 LONGEST = 600

@@ -93,6 +93,7 @@ FACTS: Mapping[str, Mapping[str, Fact]] = {
         "missing": Fact(0.0, "1H: C-H hydrogens no signal explains"),
         "missing_words": Fact("", "1H: the groups no signal explains, with their windows"),
         "missing_cover": Fact("", "what may hide the missing groups: a solvent line or words of the text"),
+        "cover_words": Fact("by another signal", "the same in words, by another signal if nothing is known"),
         "selected": Fact(False, "the text says that only some signals are listed"),
         "hides": Fact(False, "the text says that signals are overlapped, hidden or not observed"),
         "unread": Fact(0.0, "numbers like shifts without details that could be read"),

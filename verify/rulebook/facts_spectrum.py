@@ -113,6 +113,7 @@ def _hydrogens(case: RecordCase, spectrum: SpectrumCase, assignment: SpectrumAss
         "missing": float(sum(m.nuclei for m in required)),
         "missing_words": "; ".join(f"{m.nuclei:g} H of {m.window}" for m in required),
         "missing_cover": next((m.cover for m in required if m.cover), ""),
+        "cover_words": next((f"by {m.cover}" for m in required if m.cover), "by another signal"),
         "group_cut": bool(assignment.group_cut) and not _read_as_one(assignment, signals),
         "cut_words": _names(assignment.group_cut, spectrum.expectations),
     }  # fmt: skip

@@ -36,7 +36,10 @@ def judge_in_registry(
         )  # fmt: skip
     if not more:
         return result
-    findings = tuple(sorted((*result.findings, *more), key=lambda f: f.sort_key))
+    marks = {finding.fingerprint for finding in more}
+    # When the record was judged alone, a deviation that accepts one of these still met nothing.
+    kept = [f for f in result.findings if f.rule != "deviation-unmatched" or f.subject not in marks]
+    findings = tuple(sorted((*kept, *more), key=lambda f: f.sort_key))
     return replace(result, findings=findings, verdict=verdict_of(findings, bool(result.unassessed_because)))
 
 

@@ -44,10 +44,11 @@ def _about_deviations(mine: Sequence[Deviation], found: Sequence[Finding], today
     for deviation in mine:
         who = f"accepted by {deviation.accepted_by} on {deviation.accepted_on}: {deviation.reason}"
         if deviation.fingerprint not in marks:
-            yield Problem("deviation-unmatched", f"the deviation {deviation.fingerprint} meets no finding ({who})")
+            words = f"the deviation {deviation.fingerprint} meets no finding ({who})"
+            yield Problem("deviation-unmatched", words, expected=deviation.fingerprint)
         elif deviation.expires_on < today:
             words = f"the deviation {deviation.fingerprint} expired on {deviation.expires_on} ({who})"
-            yield Problem("deviation-expired", words)
+            yield Problem("deviation-expired", words, expected=deviation.fingerprint)
 
 
 class _Bench:
