@@ -24,14 +24,15 @@ def unpaired(
 ) -> tuple[float, ...]:
     """J values (Hz) of a signal that no resolved partner signal repeats.
 
-    A value is spoken of only if every signal that could hold its partner is resolved and shows another value.
+    A value is spoken of only if every signal that could hold its partner is resolved, and none in the list shows it.
     """
     lonely = []
     for coupling in signals[number].couplings:
         candidates = _partner_signals(number, coupling.value, shares, expectations)
         if not candidates or any(_open(signals[c]) for c in candidates):
             continue
-        values = [j.value for c in candidates for j in signals[c].couplings]
+        # All signals, not the candidates alone: near groups may have swapped places in the explanation.
+        values = [j.value for other, signal in enumerate(signals) if other != number for j in signal.couplings]
         if all(abs(value - coupling.value) > SAME_J for value in values):
             lonely.append(coupling.value)
     return tuple(lonely)
