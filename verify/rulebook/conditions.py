@@ -14,10 +14,8 @@ from verify.errors import ConfigurationError
 _NAME = re.compile(r"(?<![\w.\"'])([a-z]+)\.([a-z_0-9]+)(?!\s*\()")
 _TEXT = re.compile(r"\"(?:[^\"\\]|\\.)*\"|'(?:[^'\\]|\\.)*'")
 _BEYOND = re.compile(r"\s*(?:\[|\.\s*[A-Za-z_]\w*(?!\w*\s*\())")  # a path that goes on behind a fact
-OPERATORS = frozenset(
-    ("_>_", "_<_", "_>=_", "_<=_", "_==_", "_!=_", "_&&_", "_||_", "!_")
-    + ("_+_", "_-_", "_*_", "_/_", "-_", "_?_:_", "@in")
-)
+COMPARISONS = frozenset(("_>_", "_<_", "_>=_", "_<=_", "_==_", "_!=_", "@in"))
+OPERATORS = COMPARISONS | {"_&&_", "_||_", "!_", "_?_:_", "_+_", "_-_", "_*_", "_/_", "-_"}
 FUNCTIONS = frozenset(("startsWith", "endsWith", "contains", "matches", "size"))
 LONGEST = 600
 MOST_REMEMBERED = 20_000
