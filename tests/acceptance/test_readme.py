@@ -10,6 +10,8 @@ from pathlib import Path
 
 import pytest
 
+from verify.cli.main import COMMANDS
+
 ROOT = Path(__file__).parents[2]
 README = (ROOT / "README.md").read_text(encoding="utf-8")
 SHOWN = re.findall(r"```console\n\$ (peakwitness .*?)\n(.*?)```", README, re.S)
@@ -34,6 +36,11 @@ def test_readme_shows_what_the_tool_prints(command: str, output: str) -> None:
     )  # fmt: skip
     assert done.stderr == ""
     assert _words(done.stdout) == _words(output)
+
+
+def test_readme_lists_every_command() -> None:
+    listed = set(re.findall(r"^\| `peakwitness (\w+)", README, re.M))
+    assert listed == set(COMMANDS)
 
 
 def test_the_python_lines_of_readme_run() -> None:
