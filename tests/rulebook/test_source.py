@@ -56,6 +56,14 @@ def test_a_pack_is_read(tmp_path: Path) -> None:
     assert [rule.id for rule in read_pack(_pack(tmp_path))] == ["too-far"]
 
 
+def test_an_id_twice_in_a_pack_is_refused(tmp_path: Path) -> None:
+    for name in ("one", "two"):
+        (tmp_path / name).mkdir()
+        _pack(tmp_path / name)
+    with pytest.raises(ConfigurationError, match=r"two/too-far\.yaml: the id 'too-far' is that of .*one/"):
+        read_pack(tmp_path)
+
+
 @pytest.mark.parametrize(
     ("changes", "words"),
     [

@@ -70,6 +70,11 @@ def read_pack(folder: str | Path) -> list[Rule]:
     rules = [read_rule(path, str(path)) for path in sorted(folder.rglob("*.yaml"))]
     if not rules:
         raise ConfigurationError(f"{folder}: holds no rule (one .yaml file for each rule is expected)")
+    seen: dict[str, str] = {}
+    for rule in rules:
+        if rule.id in seen:
+            raise ConfigurationError(f"{rule.file}: the id '{rule.id}' is that of {seen[rule.id]} already")
+        seen[rule.id] = rule.file
     return rules
 
 
