@@ -34,6 +34,7 @@ SPECIAL_ELEMENTS = frozenset(
     ["Sn", "Hg", "Pb", "Tl", "Li", "Mg", "Zn", "Al", "Fe", "Pd", "Pt", "Ru", "Rh", "Ir", "Ni", "Co"]
 )
 EXCHANGEABLE_DEFAULT = (0.5, 13.0)
+AMMONIUM_UP_TO = 12.0  # ppm; common practice
 
 
 def shift_windows(structure: Structure, environments: EnvironmentSet, solvent: str | None) -> tuple[Window, ...]:
@@ -55,7 +56,8 @@ def shift_windows(structure: Structure, environments: EnvironmentSet, solvent: s
         if environment.nucleus in hetero:
             windows.append(_hetero(environment, hetero[environment.nucleus].get(carrier, ())))
         elif environment.exchangeable:
-            windows.append(_exchanging(acids.get(carrier, ()), solvent))
+            salted = "salt" in structure.flags and environment.exchangeable in ("amine", "ammonium")
+            windows.append(_exchanging(acids.get(carrier, ()), solvent, salted))
         elif mol.GetAtomWithIdx(carrier).GetAtomicNum() != 6 or found is None:
             windows.append(_hydride(mol.GetAtomWithIdx(carrier).GetSymbol()))
         else:
@@ -88,6 +90,9 @@ def _joined(fitted: Window, low: float, high: float, chosen: ShiftClass, nucleus
     """Fitted centre and class window weighed by their widths; a class that disagrees widens instead."""
     middle, width = (low + high) / 2.0, (high - low) / 2.0 / CLASS_WIDTHS
     width = max(width, NARROWEST[nucleus])
+    if len(fitted.trail) == 1:  # nothing but the base: the surroundings were never met
+        step = Increment(f"handbook class: {chosen.label}", middle - fitted.centre, f"rules/tables ({chosen.source})")
+        return Window(low, high, middle, width, (*fitted.trail, step))
     apart = abs(middle - fitted.centre)
     if apart > 2.0 * (width + fitted.scale):
         return replace(fitted, scale=max(fitted.scale, apart / 4.0))
@@ -119,8 +124,9 @@ def _widened(window: Window, environment: Environment, solvent: str | None, meta
     return replace(window, scale=scale, low=window.low - more - extra, high=window.high + more + extra)
 
 
-def _exchanging(classes: Sequence[ShiftClass], solvent: str | None) -> Window:
-    """OH, NH, SH: the window of the last class that fits, hydrogen bonds widen it."""
+def _exchanging(classes: Sequence[ShiftClass], solvent: str | None, salted: bool = False) -> Window:
+    """OH, NH, SH: the window of the last class that fits, hydrogen bonds widen it. ``salted``: the N of an amine drawn
+    beside its acid, whose hydrogens lie anywhere up to those of an ammonium ion."""
     low, high = EXCHANGEABLE_DEFAULT
     label, source = "exchangeable hydrogen", "common practice"
     key = "DMSO-d6" if solvent in ("DMSO-d6", "DMF-d7", "acetone-d6") else "CDCl3"
@@ -129,6 +135,7 @@ def _exchanging(classes: Sequence[ShiftClass], solvent: str | None) -> Window:
         window = chosen.windows.get(key) or next(iter(chosen.windows.values()), None)
         if window is not None:
             low, high, label, source = window[0], window[1], chosen.label, chosen.source
+    high = max(high, AMMONIUM_UP_TO) if salted else high
     middle, scale = (low + high) / 2.0, max((high - low) / 2.0 / 1.3, 0.7)
     trail = (Increment(f"handbook class: {label}", middle, f"rules/tables/exchangeables ({source})"),)
     return Window(low - 3.5, high + 3.5, middle, scale, trail)

@@ -65,6 +65,27 @@ def read_header(text: str) -> Header:
     return Header(nucleus, float(field.group(1)) if field else None, _solvent(head), _temperature(head), end)
 
 
+def only_section(text: str, nucleus: str | None) -> str:
+    """The text with everything blanked but one spectrum of a paragraph that tells of several, each under its own head.
+
+    The section of ``nucleus``, else the first; a text without a second head stays as it is. The length is kept.
+    """
+    heads = [m for m in _NUCLEUS.finditer(text) if not _inside_bracket(text, m.start())]
+    if len(heads) < 2:
+        return text
+    names = [_NAMES[next(n for n, group in enumerate(head.groups()) if group)] for head in heads]
+    chosen = names.index(nucleus) if nucleus in names else 0
+    start = heads[chosen].start() if chosen else 0
+    end = heads[chosen + 1].start() if chosen + 1 < len(heads) else len(text)
+    return " " * start + text[start:end] + " " * (len(text) - end)
+
+
+def _inside_bracket(text: str, position: int) -> bool:
+    """True where a bracket opened shortly before is still open: "(see 13C NMR)" is no head."""
+    before = text[max(0, position - 60) : position]
+    return before.count("(") > before.count(")")
+
+
 def _lead(text: str, start: int) -> int:
     """Offset behind everything that belongs to the head."""
     position = start

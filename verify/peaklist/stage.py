@@ -9,7 +9,8 @@ from dataclasses import replace
 from verify.findings.location import Locus, Span
 from verify.findings.problem import Problem
 from verify.peaklist.details import Details, read_details
-from verify.peaklist.header import Header, read_header
+from verify.peaklist.header import Header, only_section, read_header
+from verify.peaklist.joining import joined_ranges
 from verify.peaklist.model import PeakList, Signal
 from verify.peaklist.normalise import plain
 from verify.peaklist.remarks import is_prose, is_told, read_remarks
@@ -25,7 +26,7 @@ FURTHEST = {"1H": 60.0, "13C": 400.0, "19F": 500.0, "31P": 500.0}
 def read_peak_list(text: str, nucleus: str | None = None) -> PeakList:
     """Read one reported list. ``nucleus`` ("1H", "13C", "19F", "31P") outweighs the head of the text; 1H if neither
     says it. Spans count characters of ``text``. Never raises: what cannot be read is a problem."""
-    plain_text = plain(text[:LONGEST_TEXT])
+    plain_text = only_section(plain(text[:LONGEST_TEXT]), nucleus)
     header = read_header(plain_text)
     kind = nucleus or header.nucleus or "1H"
     if not plain_text.strip():
@@ -34,7 +35,7 @@ def read_peak_list(text: str, nucleus: str | None = None) -> PeakList:
     problems: list[Problem] = []
     for cut in cuts(plain_text, header.end, carbon=kind != "1H"):
         _read_cut(text, plain_text, cut, kind, signals, problems)
-    signals, left_out = _without_words(signals, kind)
+    signals, left_out = _without_words(joined_ranges(signals, plain_text) if kind == "1H" else signals, kind)
     problems += _judge_text(text, plain_text, header, kind, signals)
     problems += _unread(left_out)
     if any(p.blocks == "spectrum" for p in problems):
