@@ -90,7 +90,7 @@ def test_what_no_one_would_write_is_dear(blocks: Blocks, lines: tuple[int, ...],
 
 
 def test_habits_of_authors_cost_a_shrug() -> None:
-    # published habits, measured with a prototype on 602 lists: outer lines lost, doubled J, letters out of order
+    # published habits, measured on 602 published lists: outer lines lost, doubled J, letters out of order
     assert 1.0 <= price(CH_OF_ISOPROPYL, (5,), 6.1).cost <= 1.6
     assert 1.0 <= price(CH_OF_ISOPROPYL, (2, 3), 13.8, 6.9).cost <= 1.6
     assert price(MIDDLE_OF_PROPYL, (2, 3), 13.9, 7.0).cost <= 1.6

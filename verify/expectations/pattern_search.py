@@ -1,6 +1,6 @@
 """Least-cost placement of coupling partners on the letters of a first-order pattern.
 
-Penalties in nats are those measured on published lists with a throw-away prototype; windows in Hz.
+Penalties in nats are those measured on published lists; windows in Hz.
 """
 
 from __future__ import annotations
