@@ -19,7 +19,8 @@ EMPTY = {
         "structure", "record", "peaklist", "findings",
     )
 }  # fmt: skip
-EMPTY |= {f"verify/{name}.py": '"""Part."""\n' for name in ("__init__", "api", "compiled", "resources", "errors", "version")}
+PARTS = ("__init__", "api", "compiled", "resources", "errors", "version")
+EMPTY |= {f"verify/{name}.py": '"""Part."""\n' for name in PARTS}
 
 
 def imports(root: Path) -> dict[str, set[str]]:

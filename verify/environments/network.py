@@ -7,7 +7,6 @@ to 31P over four bonds. Common practice, from memory; sizes are the business of 
 
 from __future__ import annotations
 
-from dataclasses import dataclass
 from itertools import pairwise
 
 from verify.environments.skeleton import AROMATIC, DOUBLE, SINGLE, Skeleton
@@ -16,17 +15,6 @@ SPINS = {9: "19F", 15: "31P"}
 LONGEST = {"1H": 5, "19F": 5, "31P": 4}
 Signature = tuple[int, str]
 MARKS = {SINGLE: "-", AROMATIC: ":", DOUBLE: "=", 6: "#"}
-
-
-@dataclass(frozen=True, slots=True)
-class Contact:
-    """One nucleus reached from another: ``chain`` of heavy atoms between them, both carriers included."""
-
-    nucleus: str
-    atom: int
-    bonds: int
-    chain: tuple[int, ...]
-    signature: Signature
 
 
 def chains_from(s: Skeleton, atom: int, longest: int) -> dict[int, tuple[int, ...]]:
