@@ -13,7 +13,6 @@ from verify.environments.skeleton import AROMATIC, DOUBLE, SINGLE, Skeleton
 
 SPINS = {9: "19F", 15: "31P"}
 LONGEST = {"1H": 5, "19F": 5, "31P": 4}
-Signature = tuple[int, str]
 MARKS = {SINGLE: "-", AROMATIC: ":", DOUBLE: "=", 6: "#"}
 
 
