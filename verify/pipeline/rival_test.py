@@ -23,6 +23,7 @@ LARGEST = 45  # heavy atoms; beyond, isomers are too many to hold against a list
 # Shifts of carbons vary more than their windows say when a group moves: what they win counts half and little,
 # what they lose counts in full (measured on published lists and on isomers planted in them).
 CARBON_SHARE, CARBON_MOST = 0.5, 2.0
+USUAL = 0.3
 
 
 def rival_fits(
@@ -48,19 +49,22 @@ def rival_fits(
 
 
 def _most_to_win(family: str, judged: tuple[SpectrumCase, ...]) -> float:
-    """No relative of a family can win more than what the signals cost that its move can touch, and some carbons."""
+    """No relative of a family can win much more than what the signals cost that its move can touch, and some carbons.
+
+    What any structure pays (``USUAL`` nats a signal) is not to be won.
+    """
     most = CARBON_MOST
     for spectrum in judged:
         if spectrum.assignment is None or spectrum.spectrum.nucleus != "1H":
             continue
-        if family != "ring-position":
-            most += spectrum.assignment.cost
-            continue
         aryl = {e.environment.index for e in spectrum.expectations if e.site == "aryl"}
-        touched = [r for r in spectrum.assignment.readings if any(s.environment in aryl for s in r.shares)]
-        most += sum(s.shift_cost + s.splitting_cost for r in touched for s in r.shares)
-        most += sum(CROWDING * (len(r.shares) - 1) for r in touched)
-        most += SLACK * sum(r.excess + r.deficit for r in touched)
+        for reading in spectrum.assignment.readings:
+            if family == "ring-position" and not any(share.environment in aryl for share in reading.shares):
+                continue
+            paid = sum(share.shift_cost + share.splitting_cost for share in reading.shares)
+            crowded = CROWDING * max(0, len(reading.shares) - 1)
+            most += max(0.0, paid - USUAL) + crowded + SLACK * (reading.excess + reading.deficit)
+        most += SLACK * sum(m.nuclei for m in spectrum.assignment.missing if not m.optional)
     return most
 
 
