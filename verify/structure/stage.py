@@ -55,7 +55,8 @@ def _heavy_first(mol: Chem.Mol) -> Chem.Mol:
 
 
 def _size_problem(mol: Chem.Mol, locus: Locus) -> Problem | None:
-    heavy, total = mol.GetNumHeavyAtoms(), Chem.AddHs(mol).GetNumAtoms() if mol.GetNumAtoms() < 1000 else 1000
+    heavy = mol.GetNumHeavyAtoms()
+    total = mol.GetNumAtoms() + sum(mol.GetAtomWithIdx(n).GetTotalNumHs() for n in range(mol.GetNumAtoms()))
     if heavy <= MOST_HEAVY_ATOMS and total <= MOST_ATOMS:
         return None
     message = (f"the structure has {heavy} heavy atoms; structures of more than {MOST_HEAVY_ATOMS} heavy atoms "
