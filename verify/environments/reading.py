@@ -20,13 +20,14 @@ def permutation_sign(images: list[int]) -> int:
 
 def read_skeleton(mol: Chem.Mol, stereo: bool = True) -> Skeleton:
     """Skeleton of a sane molecule without explicit H. ``stereo`` False skips reading senses (none are drawn)."""
-    atoms = list(mol.GetAtoms())
+    atoms = [mol.GetAtomWithIdx(n) for n in range(mol.GetNumAtoms())]
     size = len(atoms)
     neighbours: list[list[int]] = [[] for _ in atoms]
     order: Rows = [{} for _ in atoms]
     senses: dict[tuple[int, int], tuple[int, int, bool]] = {}
     ring_neighbours: list[list[int]] = [[] for _ in atoms]
-    for bond in mol.GetBonds():
+    for number_of_bond in range(mol.GetNumBonds()):
+        bond = mol.GetBondWithIdx(number_of_bond)
         a, b = bond.GetBeginAtomIdx(), bond.GetEndAtomIdx()
         neighbours[a].append(b)
         neighbours[b].append(a)

@@ -34,7 +34,8 @@ MASSES: Mapping[str, tuple[float, float]] = {
 def formula_of(mol: Chem.Mol) -> dict[str, int]:
     """Element to count with implicit H counted; deuterium as "D"; C, H first, then alphabetical (Hill order)."""
     counts: dict[str, int] = {}
-    for atom in mol.GetAtoms():
+    for number in range(mol.GetNumAtoms()):  # the iterator of the toolkit costs as much as the work
+        atom = mol.GetAtomWithIdx(number)
         symbol = atom.GetSymbol()
         if symbol == "H" and atom.GetIsotope() == 2:
             symbol = "D"

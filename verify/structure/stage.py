@@ -65,7 +65,7 @@ def _size_problem(mol: Chem.Mol, locus: Locus) -> Problem | None:
 
 
 def _has_carbon(mol: Chem.Mol) -> bool:
-    return any(a.GetAtomicNum() == 6 for a in mol.GetAtoms())
+    return any(mol.GetAtomWithIdx(n).GetAtomicNum() == 6 for n in range(mol.GetNumAtoms()))
 
 
 def _no_carbon(locus: Locus) -> Problem:
@@ -119,7 +119,8 @@ def _joined(mol: Chem.Mol, drawn: tuple[Component, ...], declared: list[Componen
 def _flags(mol: Chem.Mol, components: Sequence[Component]) -> frozenset[str]:
     """Words that limit what may be judged."""
     found: set[str] = set()
-    for atom in mol.GetAtoms():
+    for index in range(mol.GetNumAtoms()):
+        atom = mol.GetAtomWithIdx(index)
         number = atom.GetAtomicNum()
         if number in METALS:
             found.add("paramagnetic-metal")
@@ -133,13 +134,16 @@ def _flags(mol: Chem.Mol, components: Sequence[Component]) -> frozenset[str]:
         found.add("salt")
     if any(c.role == "compound" and _is_zwitterion(c.mol) for c in components):
         found.add("zwitterion")
-    if is_declared_mixture(mol) or len({Chem.MolToSmiles(c.mol) for c in components if c.role == "compound"}) > 1:
+    compounds = [c.mol for c in components if c.role == "compound"]
+    several = len(compounds) > 1 and len({Chem.MolToSmiles(compound) for compound in compounds}) > 1
+    if several or is_declared_mixture(mol):
         found.add("mixture")
     return frozenset(found)
 
 
 def _is_zwitterion(mol: Chem.Mol) -> bool:
     """Opposite charges on atoms that are not bonded to each other (so not a nitro group or an N-oxide)."""
-    charged = [a for a in mol.GetAtoms() if a.GetFormalCharge()]
+    every = (mol.GetAtomWithIdx(n) for n in range(mol.GetNumAtoms()))
+    charged = [a for a in every if a.GetFormalCharge()]
     free = [a for a in charged if not any(n.GetFormalCharge() * a.GetFormalCharge() < 0 for n in a.GetNeighbors())]
     return any(a.GetFormalCharge() > 0 for a in free) and any(a.GetFormalCharge() < 0 for a in free)
