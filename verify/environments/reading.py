@@ -26,8 +26,7 @@ def read_skeleton(mol: Chem.Mol, stereo: bool = True) -> Skeleton:
     order: Rows = [{} for _ in atoms]
     senses: dict[tuple[int, int], tuple[int, int, bool]] = {}
     ring_neighbours: list[list[int]] = [[] for _ in atoms]
-    for number_of_bond in range(mol.GetNumBonds()):
-        bond = mol.GetBondWithIdx(number_of_bond)
+    for bond in map(mol.GetBondWithIdx, range(mol.GetNumBonds())):
         a, b = bond.GetBeginAtomIdx(), bond.GetEndAtomIdx()
         neighbours[a].append(b)
         neighbours[b].append(a)
@@ -38,10 +37,7 @@ def read_skeleton(mol: Chem.Mol, stereo: bool = True) -> Skeleton:
             ring_neighbours[b].append(a)
         if stereo and code == DOUBLE:
             _read_double_bond(bond, senses)
-    tags = [0] * size
-    if stereo:
-        for i, atom in enumerate(atoms):
-            tags[i] = _drawn_sense(atom, neighbours[i])
+    tags = [_drawn_sense(atom, neighbours[i]) for i, atom in enumerate(atoms)] if stereo else [0] * size
     for listed in neighbours:
         listed.sort()
     rings = mol.GetRingInfo().AtomRings()
